@@ -21,10 +21,10 @@ struct CarrierAnswer {
 struct Answer {
   Study study;
   EdgeProfile edges;
-  std::vector<CarrierAnswer> carriers;    ///< in the order of model.carriers
-  std::vector<Interband> interband;       ///< one a hole kind when electrons are there too
-  std::optional<Dynamics> dynamics;       ///< of the first carrier (the electron where there is one)
-  Notes notes;                            ///< assumptions and warnings
+  std::vector<CarrierAnswer> carriers;  ///< in the order of model.carriers
+  std::vector<Interband> interband;     ///< one a hole kind when electrons are there too
+  std::optional<Dynamics> dynamics;     ///< of the first carrier (the electron where there is one)
+  Notes notes;                          ///< assumptions and warnings
   bool converged = true;
   std::vector<std::pair<std::string, double>> timings;  ///< [ms], for --verbose
 

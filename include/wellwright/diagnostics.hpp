@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: Apache-2.0
-// Places in a file, the errors a user can cause, collected assumptions and warnings, and the progress callback.
+// Places in a file, the errors a user can cause, collected assumptions and warnings, and the progress
+// callback.
 #pragma once
 
 #include <functional>
@@ -10,7 +11,8 @@
 
 namespace wellwright {
 
-/// Where something stands: file (or "--set"), line and column counted from 1 in characters; `line_text` is that line.
+/// Where something stands: file (or "--set"), line and column counted from 1 in characters; `line_text` is
+/// that line.
 struct Place {
   std::string file;
   int line = 0;
@@ -19,8 +21,9 @@ struct Place {
   int length = 1;  ///< characters marked by the caret line
 };
 
-/// A mistake in what the user wrote. what() is the whole message as printed: place, sentence, quoted line with a
-/// caret, hint; with a second place where two contradict each other. The command ends with exit code 2.
+/// A mistake in what the user wrote. what() is the whole message as printed: place, sentence, quoted line
+/// with a caret, hint; with a second place where two contradict each other. The command ends with exit
+/// code 2.
 class InputError : public std::runtime_error {
  public:
   InputError(std::string sentence, Place place, std::string hint = {});

@@ -20,8 +20,8 @@ inline constexpr int highest_degree = 24;
 /// The reference element of `degree` (1 to highest_degree), made once.
 const ReferenceElement& reference_element(int degree);
 
-/// Elements of one degree. Arrays over nodes are element-local: element e holds rows e*(p+1) .. e*(p+1)+p, so that a
-/// boundary between two elements stands twice and coefficients may jump there.
+/// Elements of one degree. Arrays over nodes are element-local: element e holds rows e*(p+1) .. e*(p+1)+p, so
+/// that a boundary between two elements stands twice and coefficients may jump there.
 struct Grid {
   int degree = 0;
   std::vector<double> boundaries;  ///< element boundaries [nm], size elements + 1
@@ -34,14 +34,16 @@ struct Grid {
   double width(int element) const { return boundaries[element + 1] - boundaries[element]; }
 };
 
-/// Element boundaries as parts of their layer: `cuts[i]` holds the inner cuts of layer i, increasing, in (0, 1).
+/// Element boundaries as parts of their layer: `cuts[i]` holds the inner cuts of layer i, increasing, in (0,
+/// 1).
 Grid make_grid(const std::vector<double>& faces, const std::vector<std::vector<double>>& cuts, int degree);
 
-/// Values of an element-local function on `to` from its values on `from`, where both have the same boundaries or `to`
-/// refines `from` in degree or elements. Columns are functions.
+/// Values of an element-local function on `to` from its values on `from`, where both have the same boundaries
+/// or `to` refines `from` in degree or elements. Columns are functions.
 Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values, const Grid& to);
 
 /// Values at arbitrary increasing points z [nm]; row: point, column: function.
-Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values, const std::vector<double>& points);
+Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values,
+                            const std::vector<double>& points);
 
 }  // namespace wellwright

@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: Apache-2.0
-// The BenDaniel-Duke operator T(E) on spectral elements: assembly, ends, factors with inertia, and the full product.
+// The BenDaniel-Duke operator T(E) on spectral elements: assembly, ends, factors with inertia, and the full
+// product.
 #pragma once
 
 #include <Eigen/Core>
@@ -9,16 +10,17 @@
 
 namespace wellwright {
 
-/// T(E) = hbar^2/2m0 D' [1/m(E, z)] D + U - E in weak form, with in-plane momentum k. The unknowns are the values of
-/// psi at the global nodes 0..N (hard ends: nodes 0 and N are zero; periodic ends: psi_N = exp(i phase) psi_0).
-/// Eliminating the components chi_j from the linear Hermitian problem in (psi, chi) gives exactly this T(E).
-/// Source: D.J. BenDaniel, C.B. Duke, Phys. Rev. 152, 683 (1966); C. Sirtori et al., Phys. Rev. B 50, 8663 (1994).
+/// T(E) = hbar^2/2m0 D' [1/m(E, z)] D + U - E in weak form, with in-plane momentum k. The unknowns are the
+/// values of psi at the global nodes 0..N (hard ends: nodes 0 and N are zero; periodic ends: psi_N = exp(i
+/// phase) psi_0). Eliminating the components chi_j from the linear Hermitian problem in (psi, chi) gives
+/// exactly this T(E). Source: D.J. BenDaniel, C.B. Duke, Phys. Rev. 152, 683 (1966); C. Sirtori et al., Phys.
+/// Rev. B 50, 8663 (1994).
 class Hamiltonian {
  public:
   explicit Hamiltonian(const Profile& profile, double k = 0);
 
   const Profile& profile() const { return *profile_; }
-  int nodes() const;          ///< global nodes N + 1
+  int nodes() const;  ///< global nodes N + 1
   int poles() const;
   double k() const { return k_; }
   /// The highest pole anywhere: above it the count of negative pivots is the count of levels [eV].
@@ -27,8 +29,8 @@ class Hamiltonian {
   double lowest_edge() const { return lowest_edge_; }
   double highest_edge() const { return highest_edge_; }
 
-  /// Coefficients of element `e` at energy E: `stiffness` hbar^2/2m0 /m, `potential` U + k terms - E, and their
-  /// derivatives in E with the sign turned (both positive), at its nodes.
+  /// Coefficients of element `e` at energy E: `stiffness` hbar^2/2m0 /m, `potential` U + k terms - E, and
+  /// their derivatives in E with the sign turned (both positive), at its nodes.
   void element_coefficients(int element, double E, double* stiffness, double* potential, double* d_stiffness,
                             double* d_potential) const;
 
@@ -41,8 +43,9 @@ class Hamiltonian {
   double highest_pole_, norm_, lowest_edge_, highest_edge_;
 };
 
-/// LDL' factors of T(E), element by element: the inner nodes of each element are eliminated, then its left node, so
-/// that the work and the memory are linear in the elements. Reused for many energies without allocation.
+/// LDL' factors of T(E), element by element: the inner nodes of each element are eliminated, then its left
+/// node, so that the work and the memory are linear in the elements. Reused for many energies without
+/// allocation.
 class Factors {
  public:
   explicit Factors(const Hamiltonian& hamiltonian);
@@ -50,8 +53,8 @@ class Factors {
   void compute(double E, double cos_phase = 1);
   /// Negative pivots: the levels below E when E is above every pole (Sylvester's law of inertia).
   int negative() const { return negative_; }
-  /// x <- T(E)^-1 x over global nodes (hard ends: x is zero at both ends before and after; periodic ends, phase 0:
-  /// node N repeats node 0 and carries no load).
+  /// x <- T(E)^-1 x over global nodes (hard ends: x is zero at both ends before and after; periodic ends,
+  /// phase 0: node N repeats node 0 and carries no load).
   void solve(Eigen::VectorXd& x) const;
   /// Periodic ends: S_00 + S_NN and S_0N of the stack condensed to its two faces, for any Bloch phase:
   /// levels of phase p obey diagonal() + 2 cos(p) coupling() = 0.
@@ -61,15 +64,19 @@ class Factors {
   int inner_negative() const { return inner_negative_; }
 
  private:
+  void element_matrix(int element, double E);
+
   const Hamiltonian* h_;
-  int p_;
-  double E_ = 0;
+  int p_, elements_;
+  bool periodic_;
   int negative_ = 0, inner_negative_ = 0;
-  double face_[3] = {0, 0, 0};  // S00, S0N, SNN
-  double last_ = 0;             // pivot of the identified face node
-  std::vector<double> L_;       // per element: unit lower factor, (p+1) x p, plus border row
-  std::vector<double> d_;       // pivots per eliminated node
-  std::vector<double> border_;  // coupling of each eliminated node to node 0, divided by its pivot
+  double face_[3] = {0, 0, 0};    // S00, S0N, SNN
+  double last_ = 0;               // pivot of the identified face node
+  Eigen::MatrixXd matrix_;        // of one element, while it is eliminated
+  std::vector<double> products_;  // w_q D_qi D_qj of the reference element, (q, pair i >= j)
+  std::vector<double> factor_;    // per element: columns of the unit lower factor, p columns of p + 1
+  std::vector<double> pivot_;     // per global node 0..N-1
+  std::vector<double> border_;    // coupling of each node to node 0 over its pivot (periodic)
 };
 
 /// From element-local to global nodes and back.

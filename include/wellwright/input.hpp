@@ -26,9 +26,9 @@ class Node {
   bool is_sequence() const { return kind_ == Kind::sequence; }
   bool is_scalar() const { return kind_ == Kind::scalar; }
 
-  const Place& place() const { return place_; }          ///< of the value
-  const std::string& text() const { return text_; }      ///< of a scalar, as written
-  bool quoted() const { return quoted_; }                ///< the scalar stood in quotes
+  const Place& place() const { return place_; }                   ///< of the value
+  const std::string& text() const { return text_; }               ///< of a scalar, as written
+  bool quoted() const { return quoted_; }                         ///< the scalar stood in quotes
   const std::vector<Entry>& entries() const { return entries_; }  ///< of a map
   const std::vector<Node>& items() const { return items_; }       ///< of a sequence
 
@@ -37,7 +37,8 @@ class Node {
   /// The place of the key itself (for "unknown key" errors).
   const Place& key_place(std::string_view key) const;
 
-  /// Readers of scalars: throw InputError at this place, saying what is expected. `name` is the key in the message.
+  /// Readers of scalars: throw InputError at this place, saying what is expected. `name` is the key in the
+  /// message.
   double number(std::string_view name) const;
   int whole_number(std::string_view name, int lowest, int highest) const;
   bool on_off(std::string_view name) const;  ///< on | off (true and false are accepted)
@@ -75,32 +76,32 @@ struct Node::Entry {
 /// Limits on hostile input; every refusal names the limit.
 struct InputLimits {
   std::size_t file_bytes = 8u << 20;
-  std::size_t nodes = 2'000'000;       ///< after alias expansion
+  std::size_t nodes = 2'000'000;  ///< after alias expansion
   int depth = 64;
 };
 
-/// Parses YAML `text`; `file` is the name used in messages. Refuses repeated keys, a second document, .nan and .inf,
-/// numbers with a leading zero (010), binary text, tabs as indentation, alias bombs.
-/// Throws InputError.
+/// Parses YAML `text`; `file` is the name used in messages. Refuses repeated keys, a second document, .nan
+/// and .inf, numbers with a leading zero (010), binary text, tabs as indentation, alias bombs. Throws
+/// InputError.
 Node read_yaml(std::string_view text, const std::string& file, const InputLimits& limits = {});
 
 /// Reads a whole file. Throws FileTrouble when it cannot be read.
 std::string read_file(const std::string& path, std::size_t limit = InputLimits{}.file_bytes);
 
-/// Replaces (or adds) the value at a dotted `path` such as "field" or "layers.wide well.thickness"; `text` is parsed
-/// as YAML. Layers are found by name or number (counted from 1 after repeats are unrolled). Throws InputError with the
-/// place "--set".
+/// Replaces (or adds) the value at a dotted `path` such as "field" or "layers.wide well.thickness"; `text` is
+/// parsed as YAML. Layers are found by name or number (counted from 1 after repeats are unrolled). Throws
+/// InputError with the place "--set".
 void set_value(Node& study, const std::string& path, const std::string& text);
 
 /// A key of an input file, declared once: validation, printed defaults and the reference page come from it.
 struct KeyDeclaration {
-  std::string path;            ///< e.g. "model.bands", "layers[].thickness"
-  std::string type;            ///< "quantity", "number", "word", "list", "map", "text", "on|off", "whole number"
+  std::string path;  ///< e.g. "model.bands", "layers[].thickness"
+  std::string type;  ///< "quantity", "number", "word", "list", "map", "text", "on|off", "whole number"
   std::vector<Dimension> dimensions;
-  std::string default_text;    ///< as printed; empty: no default
+  std::string default_text;  ///< as printed; empty: no default
   std::vector<std::string> allowed;
-  std::string sentence;        ///< for the reference page
-  int step = 1;                ///< the step that brings it; keys of a later step are refused as not yet built
+  std::string sentence;  ///< for the reference page
+  int step = 1;          ///< the step that brings it; keys of a later step are refused as not yet built
 };
 
 }  // namespace wellwright

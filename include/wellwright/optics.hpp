@@ -18,8 +18,8 @@ struct Transitions {
   Eigen::MatrixXd dipole;               ///< z_fi [nm], all components; velocity form for periodic ends
   Eigen::MatrixXd oscillator_strength;  ///< free electron mass convention, negative downward
   Eigen::MatrixXd beat_period;          ///< h/|energy| [ps]; NaN on the diagonal
-  /// `bands: one`, hard ends: for each initial level the closed sum over all final states of the discrete operator and
-  /// <m0/m>; both NaN otherwise.
+  /// `bands: one`, hard ends: for each initial level the closed sum over all final states of the discrete
+  /// operator and <m0/m>; both NaN otherwise.
   Eigen::VectorXd f_sum, f_sum_expected;
 };
 Transitions transitions(const Levels& levels);

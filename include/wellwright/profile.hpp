@@ -10,13 +10,14 @@
 
 namespace wellwright {
 
-/// 1/m(E, z) = a0(z) + sum_j b_j(z) / (E - v_j(z)); all in the tilted energy of this carrier. Rows: element-local nodes.
+/// 1/m(E, z) = a0(z) + sum_j b_j(z) / (E - v_j(z)); all in the tilted energy of this carrier. Rows:
+/// element-local nodes.
 struct Coefficients {
-  Eigen::VectorXd edge;        ///< U [eV]: conduction edge, or for holes Ev_max - Ev, with field
-  Eigen::VectorXd a0;          ///< [1/m0]
-  Eigen::MatrixXd b;           ///< (node, pole) [eV/m0]
-  Eigen::MatrixXd v;           ///< (node, pole) [eV]
-  Eigen::VectorXd in_plane;    ///< ratio of the in-plane to the z inverse mass
+  Eigen::VectorXd edge;      ///< U [eV]: conduction edge, or for holes Ev_max - Ev, with field
+  Eigen::VectorXd a0;        ///< [1/m0]
+  Eigen::MatrixXd b;         ///< (node, pole) [eV/m0]
+  Eigen::MatrixXd v;         ///< (node, pole) [eV]
+  Eigen::VectorXd in_plane;  ///< ratio of the in-plane to the z inverse mass
   int poles() const { return static_cast<int>(b.cols()); }
 };
 
@@ -26,32 +27,53 @@ struct Profile {
   Carrier carrier = Carrier::electron;
   Bands bands = Bands::two;
   Ends ends = Ends::hard;
-  double field = 0;            ///< F [V/nm]
-  double hole_edge = 0;        ///< Ev_max for holes [eV from the zero]
+  double field = 0;      ///< F [V/nm]
+  double hole_edge = 0;  ///< Ev_max for holes [eV from the zero]
   Coefficients at;
 };
 
-/// How the coefficients and the element widths move with one parameter of the stack.
-struct ProfileDerivative {
-  Eigen::VectorXd edge, a0;    ///< d/dparameter at fixed reference coordinate of each element
+/// How the coefficients of some rows move with one parameter of the stack at fixed place inside their
+/// elements. Rows outside first_row .. first_row + edge.size() do not move (other than by geometry and
+/// field).
+struct MaterialDerivative {
+  int first_row = 0;
+  Eigen::VectorXd edge, a0;
   Eigen::MatrixXd b, v;
-  Eigen::VectorXd width;       ///< d(element width)/dparameter, per element
-};
-
-struct Parameter {
-  enum class Kind { thickness, composition, composition_to, field } kind = Kind::field;
-  int layer = 0;  ///< 0-based
 };
 
 /// The profile of `carrier` on `grid`.
 Profile make_profile(const Study& study, Carrier carrier, const Grid& grid);
-/// Its derivative; the key the user wrote (field or bias) stays fixed.
-ProfileDerivative differentiate(const Study& study, const Profile& profile, const Parameter& parameter);
 
-/// First division of the stack into elements for levels up to `top` [eV] (in the carrier's own energy).
-Grid first_grid(const Study& study, Carrier carrier, double top, int degree);
+/// Derivatives of the coefficients, by central differences of sixth order of the material table's smooth
+/// functions (relative error about 1e-11). The zero of energy and the reference gap of `offset_ratio` stay
+/// fixed.
+class ProfileDerivatives {
+ public:
+  ProfileDerivatives(const Study& study, const Profile& profile);
+  /// With the composition of layer `layer` (0-based; `far_end`: of the `to` end of a graded layer). The layer
+  /// must have one.
+  MaterialDerivative composition(int layer, bool far_end);
+  /// With the thickness of `layer`: what is left beside geometry and field, the change of the smeared
+  /// fractions near its faces. Empty without interdiffusion.
+  MaterialDerivative thickness(int layer);
 
-/// Band edges on the electron-energy axis, densities and permittivity at the nodes of `grid`, for files and figures.
+ private:
+  const Study* study_;
+  const Profile* profile_;
+  Study work_;  // a copy whose layers are moved and put back
+};
+
+/// First division of the layers into elements, as cuts for make_grid, for the lowest `count` levels or for
+/// levels up to `top` [eV] (in the carrier's own energy) where given: an element spans about four radians or
+/// decay lengths. Elements shrink by 1/5 towards a face at which a grading is not analytic, and are no longer
+/// than two smearing lengths near a smeared interface.
+std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier, int count,
+                                            std::optional<double> top);
+/// Every element halved.
+std::vector<std::vector<double>> halved(const std::vector<std::vector<double>>& cuts);
+
+/// Band edges on the electron-energy axis, densities and permittivity at the nodes of `grid`, for files and
+/// figures.
 struct EdgeProfile {
   Grid grid;
   Eigen::VectorXd conduction_band_edge, heavy_hole_band_edge, light_hole_band_edge;  ///< [eV], field included

@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: Apache-2.0
-// Conditions, model and questions of a study as plain structs, and the reader that makes them from the study file.
+// Conditions, model and questions of a study as plain structs, and the reader that makes them from the study
+// file.
 #pragma once
 
 #include <optional>
@@ -18,12 +19,12 @@ enum class Ends { hard, periodic };
 
 std::string_view name_of(Carrier carrier);  ///< "electron", "heavy hole", "light hole"
 
-/// Which levels are wanted. Exactly one way: a count from the lowest; a window; or the lowest `count` that live mostly
-/// in some layers.
+/// Which levels are wanted. Exactly one way: a count from the lowest; a window; or the lowest `count` that
+/// live mostly in some layers.
 struct LevelRequest {
   std::optional<int> count = 6;
-  std::optional<double> above, below;   ///< window [eV]
-  std::vector<int> in_layers;           ///< 0-based; with `count`
+  std::optional<double> above, below;  ///< window [eV]
+  std::vector<int> in_layers;          ///< 0-based; with `count`
 };
 
 struct Model {
@@ -33,14 +34,28 @@ struct Model {
   LevelRequest levels;
   std::vector<std::pair<int, int>> transitions;  ///< counted from 1; empty: all pairs of the lowest four
   int bloch_phases = 51;
-  double accuracy = 1e-6;                        ///< [eV]
+  double accuracy = 1e-6;  ///< [eV]
 };
 
 /// Starts of the dynamics, one struct each.
-struct PacketStart { double centre = 0, spread = 0, wavenumber = 0; };           // nm, nm, nm^-1
-struct MixStart { struct Part { int level = 1; double amplitude = 1, phase = 0; }; std::vector<Part> parts; };  // phase in rad
-struct LocalizedStart { std::vector<int> layers; int levels = 2; };              // 0-based layers
-struct FieldStepStart { double field = 0; int level = 1; };                      // V/nm
+struct PacketStart {
+  double centre = 0, spread = 0, wavenumber = 0;
+};  // nm, nm, nm^-1
+struct MixStart {
+  struct Part {
+    int level = 1;
+    double amplitude = 1, phase = 0;
+  };
+  std::vector<Part> parts;
+};  // phase in rad
+struct LocalizedStart {
+  std::vector<int> layers;
+  int levels = 2;
+};  // 0-based layers
+struct FieldStepStart {
+  double field = 0;
+  int level = 1;
+};  // V/nm
 struct PhotoexcitedStart {
   Carrier hole = Carrier::heavy_hole;
   int level = 1;
@@ -51,20 +66,21 @@ using Start = std::variant<PacketStart, MixStart, LocalizedStart, FieldStepStart
 
 struct DynamicsRequest {
   Start start;
-  double duration = 10;     ///< [ps]
+  double duration = 10;  ///< [ps]
   int samples = 2001;
   bool density_map = true;
-  Place place;              ///< of the start, for errors found later
+  Place place;  ///< of the start, for errors found later
 };
 
 struct Study {
   std::string title;
-  std::string text;                  ///< the whole study file
+  std::string text;  ///< the whole study file
   std::string file;
-  std::vector<std::string> settings; ///< the --set list
+  std::vector<std::string> settings;  ///< the --set list
   Stack stack;
-  double field = 0;                  ///< F along +z [V/nm]
-  std::optional<double> bias;        ///< when given: potential of the top minus the bottom [V], and field = -bias / length
+  double field = 0;  ///< F along +z [V/nm]
+  std::optional<double>
+      bias;  ///< when given: potential of the top minus the bottom [V], and field = -bias / length
   Model model;
   std::optional<DynamicsRequest> dynamics;
 };

@@ -1,0 +1,92 @@
+// SPDX-License-Identifier: Apache-2.0
+// Barycentric Lagrange interpolation inside elements.
+#include <algorithm>
+#include <cmath>
+
+#include "wellwright/grid.hpp"
+
+namespace wellwright {
+namespace {
+
+// Barycentric weights of the GLL nodes (J.-P. Berrut, L.N. Trefethen, SIAM Rev. 46, 501 (2004)).
+Eigen::VectorXd barycentric_weights(const Eigen::VectorXd& nodes) {
+  const auto n = nodes.size();
+  Eigen::VectorXd w = Eigen::VectorXd::Ones(n);
+  for (Eigen::Index i = 0; i < n; ++i)
+    for (Eigen::Index j = 0; j < n; ++j)
+      if (i != j) w[i] /= 2 * (nodes[i] - nodes[j]);  // the factor 2 keeps the products near one
+  return w;
+}
+
+// Row of interpolation weights for the point x of the reference element.
+void interpolation_row(const Eigen::VectorXd& nodes, const Eigen::VectorXd& w, double x,
+                       Eigen::VectorXd& row) {
+  for (Eigen::Index i = 0; i < nodes.size(); ++i) {
+    if (x == nodes[i]) {
+      row.setZero();
+      row[i] = 1;
+      return;
+    }
+    row[i] = w[i] / (x - nodes[i]);
+  }
+  row /= row.sum();
+}
+
+int element_at(const Grid& grid, double z) {
+  const auto& b = grid.boundaries;
+  const auto after = std::upper_bound(b.begin(), b.end(), z);
+  return std::clamp(static_cast<int>(after - b.begin()) - 1, 0, grid.elements() - 1);
+}
+
+class Interpolator {
+ public:
+  Interpolator(const Grid& grid, const Eigen::MatrixXd& values)
+      : grid_(grid),
+        values_(values),
+        nodes_(reference_element(grid.degree).nodes),
+        w_(barycentric_weights(nodes_)),
+        row_(grid.degree + 1) {}
+  template <class Out>
+  void at(int element, double z, Out out) {
+    const double left = grid_.boundaries[static_cast<std::size_t>(element)];
+    const double x = std::clamp(2 * (z - left) / grid_.width(element) - 1, -1.0, 1.0);
+    interpolation_row(nodes_, w_, x, row_);
+    out.noalias() = row_.transpose() * values_.middleRows(element * (grid_.degree + 1), grid_.degree + 1);
+  }
+
+ private:
+  const Grid& grid_;
+  const Eigen::MatrixXd& values_;
+  const Eigen::VectorXd& nodes_;
+  Eigen::VectorXd w_, row_;
+};
+
+}  // namespace
+
+Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values, const Grid& to) {
+  Eigen::MatrixXd out(to.rows(), values.cols());
+  Interpolator interpolator(from, values);
+  int source = 0;
+  for (int e = 0; e < to.elements(); ++e) {
+    const double middle =
+        0.5 * (to.boundaries[static_cast<std::size_t>(e)] + to.boundaries[static_cast<std::size_t>(e) + 1]);
+    while (source + 1 < from.elements() && from.boundaries[static_cast<std::size_t>(source) + 1] < middle)
+      ++source;
+    for (int i = 0; i <= to.degree; ++i) {
+      const int row = e * (to.degree + 1) + i;
+      interpolator.at(source, to.z[row], out.row(row));
+    }
+  }
+  return out;
+}
+
+Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values,
+                            const std::vector<double>& points) {
+  Eigen::MatrixXd out(static_cast<Eigen::Index>(points.size()), values.cols());
+  Interpolator interpolator(from, values);
+  for (std::size_t i = 0; i < points.size(); ++i)
+    interpolator.at(element_at(from, points[i]), points[i], out.row(static_cast<Eigen::Index>(i)));
+  return out;
+}
+
+}  // namespace wellwright
