@@ -7,6 +7,7 @@
 #include <optional>
 #include <string>
 #include <string_view>
+#include <utility>
 #include <vector>
 
 #include "wellwright/diagnostics.hpp"
@@ -102,6 +103,7 @@ struct KeyDeclaration {
   std::vector<std::string> allowed;
   std::string sentence;  ///< for the reference page
   int step = 1;          ///< the step that brings it; keys of a later step are refused as not yet built
+  std::vector<std::pair<std::string, int>> later = {};  ///< words that a later step brings, with that step
 };
 
 }  // namespace wellwright
