@@ -98,10 +98,10 @@ void set_value(Node& study, const std::string& path, const std::string& text);
 struct KeyDeclaration {
   std::string path;  ///< e.g. "model.bands", "layers[].thickness"
   std::string type;  ///< "quantity", "number", "word", "list", "map", "text", "on|off", "whole number"
-  std::vector<Dimension> dimensions;
-  std::string default_text;  ///< as printed; empty: no default
-  std::vector<std::string> allowed;
-  std::string sentence;  ///< for the reference page
+  std::vector<Dimension> dimensions = {};
+  std::string default_text = {};  ///< as printed; empty: no default
+  std::vector<std::string> allowed = {};
+  std::string sentence = {};  ///< for the reference page
   int step = 1;          ///< the step that brings it; keys of a later step are refused as not yet built
   std::vector<std::pair<std::string, int>> later = {};  ///< words that a later step brings, with that step
 };

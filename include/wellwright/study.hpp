@@ -92,4 +92,32 @@ Study read_study(const std::string& text, const std::string& file, const Materia
 /// Every key of the study file, as declared (for defaults, the reference page, the editor's schema).
 const std::vector<KeyDeclaration>& study_keys();
 
+/// One value in force, for `check`: as the study writes it, or the declared default.
+struct EffectiveValue {
+  std::string path;         ///< "model.accuracy"
+  std::string value;        ///< "1 ueV"
+  bool by_default = false;  ///< not written in the study
+  bool by_setting = false;  ///< from --set
+};
+/// The values of conditions, model and dynamics in force, in the order of study_keys(); layers and materials
+/// are not among them. Keys without default that the study leaves out are left out here too.
+std::vector<EffectiveValue> effective_values(const Study& study);
+
+/// What an address such as "field", "temperature" or "layers.wide well.thickness" measures. Throws InputError
+/// at `place` for an address that is none, with the nearest candidates.
+Dimension dimension_of_address(const Study& study, std::string_view address, const Place& place);
+/// The value at an address [internal unit]; of the first copy where a name has several. Throws InputError.
+double value_at(const Study& study, std::string_view address, const Place& place = {});
+/// The study with another value [internal unit] at an address: field, bias, temperature,
+/// model.interdiffusion, model.offset_ratio, layers.N.thickness, .composition, .from.composition,
+/// .to.composition, .donors, .acceptors (sheet densities). A name sets all its copies. The zero of energy
+/// stays; the key the user wrote (field or bias) keeps its value. The text stays that of the file. Throws
+/// InputError.
+Study with_value(const Study& study, std::string_view address, double value, const Place& place = {});
+
+/// Limits on hostile input.
+inline constexpr int largest_level_count = 1000;
+inline constexpr int largest_sample_count = 1'000'000;
+inline constexpr int largest_phase_count = 10'001;
+
 }  // namespace wellwright

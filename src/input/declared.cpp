@@ -141,9 +141,9 @@ std::string Declarations::word_of(const Node& value, std::string_view path) cons
   if (value.is_scalar())
     for (const auto& [word, step] : key.later)
       if (value.text() == word)
-        throw InputError(
-            fmt::format("`{}: {}` is not built yet: it comes with {}", last_part(path), word, name_of_step(step)),
-            value.place(), fmt::format("built so far: {}", listed(key.allowed)));
+        throw InputError(fmt::format("`{}: {}` is not built yet: it comes with {}", last_part(path), word,
+                                     name_of_step(step)),
+                         value.place(), fmt::format("built so far: {}", listed(key.allowed)));
   return value.word(last_part(path), key.allowed);
 }
 

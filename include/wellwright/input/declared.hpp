@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: Apache-2.0
-// Reading by declaration: unknown keys, keys of a later step, defaults and allowed words all come from one list.
+// Reading by declaration: unknown keys, keys of a later step, defaults and allowed words all come from one
+// list.
 #pragma once
 
 #include <map>
@@ -22,11 +23,12 @@ class Declarations {
   /// The keys declared directly below `path` ("" is the top of the file), in order.
   const std::vector<std::string>& below(std::string_view path) const;
 
-  /// Refuses the first key of `map` that is not declared below `path` (with the nearest candidates, or where the key
-  /// belongs) or that a later step brings. Throws InputError.
+  /// Refuses the first key of `map` that is not declared below `path` (with the nearest candidates, or where
+  /// the key belongs) or that a later step brings. Throws InputError.
   void check(const Node& map, std::string_view path) const;
 
-  /// The value of the key `path` in its parent `map`, or its default, in the internal unit. Throws InputError.
+  /// The value of the key `path` in its parent `map`, or its default, in the internal unit. Throws
+  /// InputError.
   double quantity(const Node& map, std::string_view path) const;
   int whole_number(const Node& map, std::string_view path, int lowest, int highest) const;
   bool on_off(const Node& map, std::string_view path) const;
