@@ -25,12 +25,6 @@ inline void add(BandParameters& sum, double weight, const BandParameters& term) 
   for (const auto member : all_parameters) sum.*member += weight * term.*member;
 }
 
-/// Whether the alloy mixes with others by its sublattice fractions: it is no named medium, and its edge comes
-/// from the table rather than from an explicit number of the study.
-inline bool mixes_by_fractions(const MaterialTable& table, const Alloy& alloy) {
-  return !alloy.is_medium() && !table.edge_is_final(alloy);
-}
-
 /// A mixture with these fractions; it has no name, so that overrides of an alloy by its name do not apply to
 /// it.
 inline Alloy mixture(const std::array<double, 9>& fraction) {
@@ -38,6 +32,10 @@ inline Alloy mixture(const std::array<double, 9>& fraction) {
   alloy.fraction = fraction;
   return alloy;
 }
+
+/// What the study's overrides of this alloy by its name add to a mixture of the same fractions; zero without
+/// overrides.
+BandParameters correction_of(const Stack& stack, const Alloy& alloy);
 
 /// Part of the way from the bottom to the top alloy at the part t of the thickness.
 double part_of_way(const Grading& grading, double t);

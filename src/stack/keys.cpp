@@ -38,7 +38,7 @@ const std::vector<KeyDeclaration>& stack_keys() {
       {.path = "layers[].graded.from", .type = "text", .sentence = "The alloy at the bottom face."},
       {.path = "layers[].graded.to", .type = "text", .sentence = "The alloy at the top face."},
       {.path = "layers[].graded.shape",
-       .type = "word",
+       .type = "word or map",
        .default_text = "linear",
        .allowed = {"linear", "parabolic"},
        .sentence =

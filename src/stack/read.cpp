@@ -5,6 +5,7 @@
 #include <algorithm>
 #include <cmath>
 #include <limits>
+#include <set>
 
 #include "stack/blend.hpp"
 #include "stack/layers.hpp"
@@ -165,6 +166,37 @@ void say_strain(const Stack& stack, Notes& notes) {
                       100 * row.state.in_plane, row.critical));
 }
 
+// Resolves every alloy, the middle of every grading and of every smeared interface once, so that what the
+// table lacks is said at the layer that needs it.
+void probe(const Stack& stack, const WrittenLayers& layers) {
+  const auto located = [](const Place& place, auto resolve) {
+    try {
+      resolve();
+    } catch (const InputError& error) {
+      if (!error.place().file.empty()) throw;
+      throw InputError(error.sentence(), place, error.hint());
+    }
+  };
+  std::set<std::string> done;
+  const auto middle = [&](const Alloy& from, const Alloy& to, const Place& place) {
+    if (from.is_medium() || to.is_medium() || !done.insert(from.text + " " + to.text).second) return;
+    std::array<double, 9> fraction{};
+    for (std::size_t e = 0; e < fraction.size(); ++e) fraction[e] = 0.5 * (from.fraction[e] + to.fraction[e]);
+    located(place, [&] { stack.table->resolve(mixture(fraction), stack.environment); });
+  };
+  for_each_alloy(layers, [&](const Alloy& alloy, const Place& place) {
+    if (done.insert(alloy.text).second)
+      located(place, [&] { stack.table->resolve(alloy, stack.environment); });
+  });
+  for (std::size_t i = 0; i < stack.layers.size(); ++i) {
+    const Layer& layer = stack.layers[i];
+    if (layer.grading) middle(layer.material, layer.grading->to, layer.place);
+    if (stack.interdiffusion <= 0 || i == 0) continue;
+    const Layer& under = stack.layers[i - 1];
+    middle(under.grading ? under.grading->to : under.material, layer.material, layer.place);
+  }
+}
+
 }  // namespace
 
 const Declarations& stack_declarations() {
@@ -232,6 +264,7 @@ Stack read_stack(const Node& root, const MaterialTable& table, Notes& notes) {
   const Node& ends = root["model"]["ends"];
   stack.periodic = ends.is_scalar() && ends.text() == "periodic";
 
+  probe(stack, layers);
   resolve_stack(stack, false);
   std::vector<std::string> warned;
   for_each_alloy(layers, [&](const Alloy& alloy, const Place&) {

@@ -62,7 +62,7 @@ double reference_gap(const MaterialTable& table, Environment environment, const 
   environment.offset_ratio.reset();
   double lowest = std::numeric_limits<double>::infinity();
   for (const Alloy& alloy : alloys)
-    if (mixes_by_fractions(table, alloy))
+    if (!alloy.is_medium() && !table.edge_is_final(alloy))
       lowest = std::min(lowest, table.resolve(alloy, environment).band_gap);
   return std::isfinite(lowest) ? lowest : 0;
 }
@@ -102,19 +102,35 @@ BandParameters bands_of(const Stack& stack, const Alloy& alloy) {
   return bands;
 }
 
+BandParameters correction_of(const Stack& stack, const Alloy& alloy) {
+  BandParameters correction;
+  if (!stack.scale_table) return correction;
+  add(correction, 1, bands_of(stack, alloy));
+  add(correction, -1, bands_of(stack, mixture(alloy.fraction)));
+  for (const auto member : all_parameters)  // what the mixture does not know, its neighbours do not either
+    if (!std::isfinite(correction.*member)) correction.*member = 0;
+  return correction;
+}
+
 BandParameters bands_in_layer(const Stack& stack, int layer, double t) {
   const Layer& at = stack.layers[static_cast<std::size_t>(layer)];
   if (!at.grading) return bands_of(stack, at.material);
   const double part = part_of_way(*at.grading, t);
-  if (mixes_by_fractions(*stack.table, at.material) && mixes_by_fractions(*stack.table, at.grading->to)) {
+  const Alloy &from = at.material, &to = at.grading->to;
+  if (!from.is_medium() && !to.is_medium()) {
     Fractions fraction{};
     for (std::size_t e = 0; e < fraction.size(); ++e)
-      fraction[e] = (1 - part) * at.material.fraction[e] + part * at.grading->to.fraction[e];
-    return bands_of(stack, mixture(fraction));
+      fraction[e] = (1 - part) * from.fraction[e] + part * to.fraction[e];
+    BandParameters bands = bands_of(stack, mixture(fraction));
+    if (stack.scale_table) {
+      add(bands, 1 - part, correction_of(stack, from));
+      add(bands, part, correction_of(stack, to));
+    }
+    return bands;
   }
   BandParameters bands;
-  add(bands, 1 - part, bands_of(stack, at.material));
-  add(bands, part, bands_of(stack, at.grading->to));
+  add(bands, 1 - part, bands_of(stack, from));
+  add(bands, part, bands_of(stack, to));
   return bands;
 }
 

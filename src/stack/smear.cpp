@@ -88,12 +88,13 @@ class Gathered {
 
   void take(const Alloy& alloy, double weight) {
     if (weight == 0) return;
-    if (mixes_by_fractions(*stack_.table, alloy)) {
-      for (std::size_t e = 0; e < fraction_.size(); ++e) fraction_[e] += weight * alloy.fraction[e];
-      mixed_ += weight;
-    } else {
+    if (alloy.is_medium()) {
       add(apart_, weight, bands_of(stack_, alloy));
+      return;
     }
+    for (std::size_t e = 0; e < fraction_.size(); ++e) fraction_[e] += weight * alloy.fraction[e];
+    mixed_ += weight;
+    if (stack_.scale_table) add(apart_, weight, correction_of(stack_, alloy));
   }
 
   BandParameters resolved() const {

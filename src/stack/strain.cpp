@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <limits>
+#include <map>
 
 #include "stack/blend.hpp"
 
@@ -36,9 +37,10 @@ StrainReport strain_report(const Stack& stack) {
   StrainReport report;
   if (!stack.environment.strain || !stack.environment.substrate) return report;
   std::vector<Seen> seen;
+  std::map<std::pair<std::string, std::array<double, 9>>, std::size_t> index;
   const auto find = [&](const Alloy& alloy) -> Seen& {
-    for (Seen& known : seen)
-      if (known.alloy.text == alloy.text && known.alloy.fraction == alloy.fraction) return known;
+    const auto [at, unknown] = index.emplace(std::pair(alloy.text, alloy.fraction), seen.size());
+    if (!unknown) return seen[at->second];
     Seen fresh;
     fresh.alloy = alloy;
     fresh.state = stack.table->strain(alloy, stack.environment);

@@ -35,12 +35,11 @@ const Node& find(const Node& root, std::string_view path) {
 std::vector<EffectiveValue> effective_values(const Study& study) {
   Node root = read_yaml(study.text, study.file);
   std::vector<std::string> set;
-  for (const auto& setting : study.settings) {
-    const auto equal = setting.find('=');
-    const std::string path = setting.substr(0, equal);
-    if (path.starts_with("layers")) continue;
-    set_value(root, path, setting.substr(equal + 1));
-    set.push_back(path);
+  for (const auto& text : study.settings) {
+    const Setting setting = setting_of(text);
+    if (setting.path.starts_with("layers.")) continue;  // layers are not listed
+    set_value(root, setting.path, setting.value);
+    set.push_back(setting.path);
   }
   std::vector<EffectiveValue> values;
   for (const auto& key : study_keys()) {

@@ -12,36 +12,6 @@ namespace {
 
 constexpr double hard_face_reach = 5;  // donors nearer to a hard face than this are warned of [nm]
 
-struct Setting {
-  std::string path, value;
-  Place place;
-};
-
-Setting setting_of(const std::string& text) {
-  Place place;
-  place.file = "--set";
-  place.line = 1;
-  place.column = 1;
-  place.line_text = text;
-  place.length = std::max(1, displayed_width(text));
-  const auto equal = text.find('=');
-  if (equal == std::string::npos || equal == 0)
-    throw InputError(fmt::format("`--set {}` is no path=value", text), place,
-                     "write --set \"field=12 kV/cm\"");
-  const auto trimmed = [](std::string part) {
-    part.erase(0, part.find_first_not_of(" \t"));
-    part.erase(part.find_last_not_of(" \t") + 1);
-    return part;
-  };
-  return {trimmed(text.substr(0, equal)), trimmed(text.substr(equal + 1)), place};
-}
-
-// Compositions live inside alloy names, which only the material table reads: they are set on the finished
-// study.
-bool sets_composition(const Setting& setting) {
-  return setting.path.starts_with("layers.") && setting.path.ends_with(".composition");
-}
-
 void check_periodic(const Node& root, const Study& study) {
   const Place& ends = root["model"]["ends"].place();
   const char* hint = "a periodic stack has no field and no outer faces; write ends: hard";
@@ -60,12 +30,12 @@ void warn_of_faces(const Study& study, Notes& notes) {
   for (std::size_t i = 0; i < study.stack.layers.size(); ++i) {
     const Layer& layer = study.stack.layers[i];
     if (layer.donors == 0 && layer.acceptors == 0) continue;
-    const char* face = faces[i] < hard_face_reach                      ? "bottom"
-                       : faces[i + 1] > faces.back() - hard_face_reach ? "top"
-                                                                       : nullptr;
-    if (face)
+    const auto warn = [&](const char* face) {
       notes.warn(fmt::format("layer {}: dopants lie within {:g} nm of the hard {} face",
                              layer.label(static_cast<int>(i) + 1), hard_face_reach, face));
+    };
+    if (faces[i] < hard_face_reach) warn("bottom");
+    if (faces[i + 1] > faces.back() - hard_face_reach) warn("top");
   }
 }
 
@@ -74,21 +44,13 @@ void warn_of_faces(const Study& study, Notes& notes) {
 Study read_study(const std::string& text, const std::string& file, const MaterialTable& table,
                  const std::vector<std::string>& settings, Notes& notes) {
   Node root = read_yaml(text, file);
-  if (root.is_map())
-    study_declarations().check(root, "");  // before settings: the file's own mistakes come first
-  std::vector<Setting> later;
-  for (const auto& setting_text : settings) {
-    Setting setting = setting_of(setting_text);
-    if (sets_composition(setting))
-      later.push_back(setting);
-    else
-      set_value(root, setting.path, setting.value);
-  }
   if (!root.is_map())
     throw InputError(root.present() && root.kind() != Node::Kind::null ? "the study is not a map of keys"
                                                                        : "the study is empty",
                      root.place(),
                      "start with layers: and one line a layer: - {material: GaAs, thickness: 10 nm}");
+  study_declarations().check(root, "");  // before the settings: the file's own mistakes come first
+  apply_settings(root, settings, table);
   const auto& keys = study_declarations();
   keys.check(root, "");
   const Node& model = root["model"];
@@ -118,13 +80,6 @@ Study read_study(const std::string& text, const std::string& file, const Materia
   if (root["dynamics"].present()) study.dynamics = read_dynamics(root, study);
   check_media(root, study);
   warn_of_faces(study, notes);
-  for (const Setting& setting : later) {
-    double value = 0;
-    if (!read_number(setting.value, value))
-      throw InputError(fmt::format("`{}` is no number", setting.value), setting.place,
-                       "a composition is a plain number, such as 0.2");
-    study = with_value(study, setting.path, value, setting.place);
-  }
   return study;
 }
 

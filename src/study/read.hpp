@@ -8,6 +8,16 @@ namespace wellwright {
 
 const Declarations& study_declarations();
 
+/// A "path=value" text of --set, taken apart. Throws InputError.
+struct Setting {
+  std::string path, value;
+  Place place;
+};
+Setting setting_of(const std::string& text);
+
+/// Writes the settings into the tree of the study, as if the file had been edited. Throws InputError.
+void apply_settings(Node& root, const std::vector<std::string>& settings, const MaterialTable& table);
+
 /// Reads `model` apart from the keys that make the stack, and checks it against the stack. Throws InputError.
 Model read_model(const Node& root, const Stack& stack);
 
