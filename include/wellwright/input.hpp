@@ -102,7 +102,7 @@ struct KeyDeclaration {
   std::string default_text = {};  ///< as printed; empty: no default
   std::vector<std::string> allowed = {};
   std::string sentence = {};  ///< for the reference page
-  int step = 1;          ///< the step that brings it; keys of a later step are refused as not yet built
+  int step = 1;               ///< the step that brings it; keys of a later step are refused as not yet built
   std::vector<std::pair<std::string, int>> later = {};  ///< words that a later step brings, with that step
 };
 

@@ -47,6 +47,10 @@ struct Levels {
 /// Throws NotConverged, Stopped.
 Levels solve_levels(const Study& study, Carrier carrier, Notes& notes, const Progress& progress);
 
+/// The lowest `count` levels above every valence edge on one given grid, without refinement [eV]; for tables
+/// of the order of convergence. Throws NotConverged.
+Eigen::VectorXd energies_on_grid(const Study& study, Carrier carrier, const Grid& grid, int count);
+
 /// E(k) of each level: row level, column k [nm^-1].
 struct Dispersion {
   Eigen::VectorXd k;

@@ -63,12 +63,13 @@ class ProfileDerivatives {
   Study work_;  // a copy whose layers are moved and put back
 };
 
-/// First division of the layers into elements, as cuts for make_grid, for the lowest `count` levels or for
-/// levels up to `top` [eV] (in the carrier's own energy) where given: an element spans about four radians or
-/// decay lengths. Elements shrink by 1/5 towards a face at which a grading is not analytic, and are no longer
-/// than two smearing lengths near a smeared interface.
-std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier, int count,
-                                            std::optional<double> top);
+/// First division of the layers into elements, as cuts for make_grid, for levels up to `top` [eV] in the
+/// carrier's own energy: an element spans about four radians or decay lengths. Elements shrink by 1/5 towards
+/// a face at which a grading is not analytic, and are no longer than two smearing lengths near a smeared
+/// interface.
+std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier, double top);
+/// An energy below which about `count` levels lie, by counting half waves [eV].
+double guessed_top(const Study& study, Carrier carrier, int count);
 /// Every element halved.
 std::vector<std::vector<double>> halved(const std::vector<std::vector<double>>& cuts);
 

@@ -67,18 +67,20 @@ double energy_for(const std::vector<Slab>& slabs, int count) {
 
 }  // namespace
 
-std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier, int count,
-                                            std::optional<double> top) {
+double guessed_top(const Study& study, Carrier carrier, int count) {
+  return energy_for(slabs_of(study, carrier), count);
+}
+
+std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier, double top) {
   const Stack& stack = study.stack;
   const auto slabs = slabs_of(study, carrier);
   double lowest = 1e300;
   for (const Slab& slab : slabs) lowest = std::min(lowest, slab.low);
-  const double E = top ? *top : energy_for(slabs, count);
   const double smear = stack.interdiffusion;
   std::vector<std::vector<double>> cuts(slabs.size());
   for (std::size_t i = 0; i < slabs.size(); ++i) {
     const Slab& slab = slabs[i];
-    const double span = std::max({E - slab.low, slab.high - lowest, 1e-3});
+    const double span = std::max({top - slab.low, slab.high - lowest, 1e-3});
     const double k = std::sqrt(span * slab.mass / constants::hbar2_over_2m0);
     double largest = radians_per_element / k;
     if (smear > 0) largest = std::min(largest, std::max(2 * smear, slab.thickness / 400));
@@ -87,13 +89,10 @@ std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier,
     if (!stack.layers[i].grading) continue;
     const double power = stack.layers[i].grading->power;
     if (power == std::floor(power)) continue;
-    // The vertex is the face with the lower conduction edge, `from` when equal.
-    const double far = bands_in_layer(stack, static_cast<int>(i), 1).conduction_band_edge;
-    const bool vertex_on_top = far < stack.bands[i].conduction_band_edge;
     double part = 1.0 / pieces;
     for (int j = 0; j < shrinking_elements; ++j) {
       part *= shrink;
-      cuts[i].push_back(vertex_on_top ? 1 - part : part);
+      cuts[i].push_back(stack.layers[i].grading->vertex_on_top ? 1 - part : part);
     }
     std::sort(cuts[i].begin(), cuts[i].end());
   }

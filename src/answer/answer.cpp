@@ -1,0 +1,95 @@
+// SPDX-License-Identifier: Apache-2.0
+// The chain: levels, dispersion, minibands, derivatives, transitions, interband pairs, dynamics.
+#include "wellwright/answer.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <chrono>
+
+namespace wellwright {
+namespace {
+
+constexpr double widest_k = 0.5;  // [nm^-1]: some 0.15 eV of in-plane energy in GaAs
+constexpr int k_points = 26;
+
+// Milliseconds of each part, for --verbose.
+class Stopwatch {
+ public:
+  explicit Stopwatch(std::vector<std::pair<std::string, double>>& timings) : timings_(timings) {}
+  void lap(std::string part) {
+    const auto now = std::chrono::steady_clock::now();
+    timings_.emplace_back(std::move(part), std::chrono::duration<double, std::milli>(now - last_).count());
+    last_ = now;
+  }
+
+ private:
+  std::vector<std::pair<std::string, double>>& timings_;
+  std::chrono::steady_clock::time_point last_ = std::chrono::steady_clock::now();
+};
+
+CarrierAnswer answer_for(const Study& study, Carrier carrier, Notes& notes, const Progress& progress,
+                         Stopwatch& watch) {
+  CarrierAnswer part;
+  const std::string name(name_of(carrier));
+  part.levels = solve_levels(study, carrier, notes, progress);
+  watch.lap(fmt::format("levels of the {}", name));
+  part.dispersion = in_plane_dispersion(part.levels, Eigen::VectorXd::LinSpaced(k_points, 0, widest_k));
+  watch.lap(fmt::format("in-plane dispersion of the {}", name));
+  if (study.model.ends == Ends::periodic) {
+    part.minibands = minibands(part.levels, study.model.bloch_phases);
+    watch.lap(fmt::format("minibands of the {}", name));
+  }
+  part.transitions = transitions(part.levels);
+  watch.lap(fmt::format("transitions of the {}", name));
+  part.sensitivity = sensitivity(study, part.levels, listed_transitions(study, part.levels.count()));
+  watch.lap(fmt::format("derivatives of the {}", name));
+  return part;
+}
+
+}  // namespace
+
+const CarrierAnswer* Answer::find(Carrier carrier) const {
+  const auto found = std::find_if(carriers.begin(), carriers.end(), [&](const CarrierAnswer& part) {
+    return part.levels.profile.carrier == carrier;
+  });
+  return found == carriers.end() ? nullptr : &*found;
+}
+
+Answer answer(const Study& study, Notes notes, const Progress& progress) {
+  Answer result;
+  result.study = study;
+  result.notes = std::move(notes);
+  Stopwatch watch(result.timings);
+  std::vector<Carrier> carriers = study.model.carriers;
+  // A photoexcited start needs the levels of its hole kind even where the model does not list them.
+  const PhotoexcitedStart* light =
+      study.dynamics ? std::get_if<PhotoexcitedStart>(&study.dynamics->start) : nullptr;
+  if (light && std::find(carriers.begin(), carriers.end(), light->hole) == carriers.end())
+    carriers.push_back(light->hole);
+  for (const Carrier carrier : carriers)
+    result.carriers.push_back(answer_for(study, carrier, result.notes, progress, watch));
+
+  const CarrierAnswer* electrons = result.find(Carrier::electron);
+  if (electrons) {
+    for (const CarrierAnswer& part : result.carriers)
+      if (part.levels.profile.carrier != Carrier::electron)
+        result.interband.push_back(interband(electrons->levels, part.levels));
+    if (!result.interband.empty())
+      result.notes.assume("interband energies are those of free pairs, without exciton binding");
+    watch.lap("interband pairs");
+  }
+  if (study.dynamics) {
+    const CarrierAnswer& moving = electrons ? *electrons : result.carriers.front();
+    const CarrierAnswer* holes = light ? result.find(light->hole) : nullptr;
+    result.dynamics =
+        superpose(study, moving.levels, moving.transitions, holes ? &holes->levels : nullptr, result.notes);
+    watch.lap("dynamics");
+  }
+  // The edges are shown on the grid of the first carrier, which resolves every layer.
+  result.edges = edge_profile(study, result.carriers.front().levels.profile.grid);
+  watch.lap("band edges");
+  return result;
+}
+
+}  // namespace wellwright
