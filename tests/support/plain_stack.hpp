@@ -21,6 +21,7 @@ inline constexpr Real infinite = std::numeric_limits<Real>::infinity();
 /// plane [m0], gap and spin-orbit splitting [eV] for the energy-dependent electron mass.
 struct Medium {
   double edge = 0, mass = 0.067, gap = 1.5, split_off = 0.34, in_plane_mass = 0;
+  double valence_shift = 0, split_off_shift = 0;  // of the poles by strain, whose weights stay [eV]
   double across() const { return in_plane_mass > 0 ? in_plane_mass : mass; }
   Medium with_edge(double other) const {
     Medium copy = *this;
@@ -68,11 +69,13 @@ inline Layer graded(const Medium& bottom, const Medium& top, double power, doubl
 /// 1/m(E) [1/m0] of a medium without field, E from the same zero as its edge. `two`: one pole at the valence
 /// edge. `three`: light hole and split-off with weights 2 : 1, the sum keeping the band-edge mass.
 inline Real inverse_mass(const Medium& m, int bands, Real E) {
-  const Real e = E - m.edge, gap = m.gap, so = m.split_off, edge = 1 / Real(m.mass);
+  const Real gap = m.gap, so = m.split_off, edge = 1 / Real(m.mass);
+  const Real above_valence = E - m.edge + gap - m.valence_shift;
   if (bands == 1) return edge;
-  if (bands == 2) return edge * gap / (e + gap);
+  if (bands == 2) return edge * gap / above_valence;
+  const Real above_split_off = E - m.edge + gap + so - m.split_off_shift;
   const Real P = edge / (2 / (3 * gap) + 1 / (3 * (gap + so)));
-  return 2 * P / (3 * (e + gap)) + P / (3 * (e + gap + so));
+  return 2 * P / (3 * above_valence) + P / (3 * above_split_off);
 }
 
 }  // namespace plain

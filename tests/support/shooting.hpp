@@ -95,7 +95,12 @@ class Shooter {
         const Real U = medium.edge + stack.tilt() * at;
         lowest_edge_ = std::min(lowest_edge_, U);
         highest_edge_ = std::max(highest_edge_, U);
-        if (stack.bands > 1) highest_pole_ = std::max(highest_pole_, U - medium.gap);
+        if (stack.bands > 1) {
+          highest_pole_ = std::max(highest_pole_, U - medium.gap + medium.valence_shift);
+          if (stack.bands > 2)
+            highest_pole_ =
+                std::max(highest_pole_, U - medium.gap - medium.split_off + medium.split_off_shift);
+        }
       }
       if (!layer.graded) {  // the other face of a uniform layer
         lowest_edge_ = std::min(lowest_edge_, Real(layer.medium.edge) + stack.tilt() * (z + layer.thickness));
@@ -183,6 +188,8 @@ class Shooter {
       m.edge += static_cast<double>(part * (far.edge - vertex.edge) + stack_.tilt() * z);
       m.gap += static_cast<double>(part * (far.gap - vertex.gap));
       m.split_off += static_cast<double>(part * (far.split_off - vertex.split_off));
+      m.valence_shift += static_cast<double>(part * (far.valence_shift - vertex.valence_shift));
+      m.split_off_shift += static_cast<double>(part * (far.split_off_shift - vertex.split_off_shift));
       m.mass += static_cast<double>(part * (far.mass - vertex.mass));
       const Real inverse = plain::inverse_mass(m, stack_.bands, E);
       fastest = std::max(fastest, std::abs((E - m.edge) / (K * inverse)) + k_ * k_);
@@ -197,8 +204,12 @@ class Shooter {
         return Series::constant(from) + Real(Real(to) - from) * part;
       };
       const Series U = run(vertex.edge, far.edge) + Real(stack_.tilt()) * z;
-      const Series mass = mass_at(run(vertex.mass, far.mass), run(vertex.gap, far.gap),
-                                  run(vertex.split_off, far.split_off), Series::constant(E) - U);
+      const Series gap = run(vertex.gap, far.gap);
+      const Series above_valence =
+          Series::constant(E) - U + gap - run(vertex.valence_shift, far.valence_shift);
+      const Series mass = mass_at(
+          run(vertex.mass, far.mass), gap, run(vertex.split_off, far.split_off), above_valence,
+          run(vertex.split_off_shift - vertex.valence_shift, far.split_off_shift - far.valence_shift));
       Series excess = U - Series::constant(E);
       if (k_ > 0) {  // the in-plane mass keeps its ratio to the mass along z
         const Series ratio = run(vertex.mass, far.mass) / run(vertex.across(), far.across());
@@ -240,14 +251,15 @@ class Shooter {
     return state;
   }
 
-  // m(E) with e = E - U - (in-plane part left out): 1/m = sum of poles, see plain::inverse_mass.
-  Series mass_at(const Series& mass, const Series& gap, const Series& split_off, const Series& e) const {
+  // m(E) from the energy above the upper pole; `shift` moves the lower pole from it; see plain::inverse_mass.
+  Series mass_at(const Series& mass, const Series& gap, const Series& split_off, const Series& above_valence,
+                 const Series& shift) const {
     if (stack_.bands == 1) return mass;
-    if (stack_.bands == 2) return mass * (e + gap) / gap;
-    const Series lower = gap + split_off;
-    const Series weight = Real(2) * lower + gap;  // 3 Eg (Eg + so) / m* over P
-    // P = 3 Eg (Eg + so) / (m* (3 Eg + 2 so)); 1/m = P (2 (e + Eg + so) + e + Eg) / (3 (e + Eg)(e + Eg + so))
-    return mass * weight * (e + gap) * (e + lower) / (gap * lower * (Real(2) * (e + lower) + e + gap));
+    if (stack_.bands == 2) return mass * above_valence / gap;
+    const Series lower = gap + split_off, above_split_off = above_valence + split_off - shift;
+    // P = 3 Eg (Eg + so) / (m* (3 Eg + 2 so))
+    return mass * (Real(2) * lower + gap) * above_valence * above_split_off /
+           (gap * lower * (Real(2) * above_split_off + above_valence));
   }
 
   Stack stack_;

@@ -3,6 +3,7 @@
 #include <catch2/catch.hpp>
 
 #include "support/closed_forms.hpp"
+#include "support/dense_matrix.hpp"
 #include "support/shooting.hpp"
 
 using plain::graded;
@@ -119,4 +120,18 @@ TEST_CASE("a mirrored stack in the reversed field has the same levels") {
     const Real shift = 0.004L * static_cast<Real>(up.length());
     for (int n = 0; n < 4; ++n) same(Shooter(up).level(n), Shooter(down).level(n) + shift);
   }
+}
+
+TEST_CASE("shooting and the dense matrix in (psi, chi) agree, valence-like states counted") {
+  Medium a{0, 0.067, 1.5, 0.34}, b{0.25, 0.09, 1.85, 0.3};
+  a.valence_shift = 0.05, b.split_off_shift = -0.03;  // strained poles
+  for (int model = 1; model <= 3; ++model)
+    for (const double field : {0.0, 0.006}) {
+      CAPTURE(model, field);
+      const Stack stack{
+          {uniform(b, 6), uniform(a, 7), graded(b, a, 1, 5), uniform(a, 4), uniform(b, 8)}, field, model};
+      const Shooter shooter(stack);
+      const auto all = dense::spectrum(stack, 0.5);
+      for (int n = 0; n < 5; ++n) same(shooter.level(n), all.energy[all.companions + n], 1e-11);
+    }
 }
