@@ -73,7 +73,9 @@ class Factors {
   double face_[3] = {0, 0, 0};    // S00, S0N, SNN
   double last_ = 0;               // pivot of the identified face node
   Eigen::MatrixXd matrix_;        // of one element, while it is eliminated
-  std::vector<double> products_;  // w_q D_qi D_qj of the reference element, (q, pair i >= j)
+  std::vector<double> products_;  // w_q D_qi D_qj of the reference element, pairs i >= j within q
+  std::vector<double> uniform_;   // the same summed over q, for constant mass
+  std::vector<double> packed_;    // lower triangle of one element
   std::vector<double> factor_;    // per element: columns of the unit lower factor, p columns of p + 1
   std::vector<double> pivot_;     // per global node 0..N-1
   std::vector<double> border_;    // coupling of each node to node 0 over its pivot (periodic)

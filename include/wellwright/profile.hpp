@@ -64,7 +64,7 @@ class ProfileDerivatives {
 };
 
 /// First division of the layers into elements, as cuts for make_grid, for levels up to `top` [eV] in the
-/// carrier's own energy: an element spans about four radians or decay lengths. Elements shrink by 1/5 towards
+/// carrier's own energy: an element spans about five radians or seven decay lengths. Elements shrink by 1/5 towards
 /// a face at which a grading is not analytic, and are no longer than two smearing lengths near a smeared
 /// interface.
 std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier, double top);

@@ -1,5 +1,6 @@
 // SPDX-License-Identifier: Apache-2.0
 // LDL' factors of T(E), element by element, with inertia and the condensed faces of a period.
+#include <algorithm>
 #include <cmath>
 
 #include "wellwright/hamiltonian.hpp"
@@ -17,10 +18,14 @@ Factors::Factors(const Hamiltonian& hamiltonian)
       matrix_(p_ + 1, p_ + 1) {
   const ReferenceElement& reference = reference_element(p_);
   const int n = p_ + 1;
-  for (int j = 0; j < n; ++j)
-    for (int i = j; i < n; ++i)
-      for (int q = 0; q < n; ++q)
+  for (int q = 0; q < n; ++q)
+    for (int j = 0; j < n; ++j)
+      for (int i = j; i < n; ++i)
         products_.push_back(reference.weights[q] * reference.derivative(q, i) * reference.derivative(q, j));
+  const std::size_t pairs = static_cast<std::size_t>(n * (n + 1) / 2);
+  uniform_.assign(pairs, 0);
+  packed_.assign(pairs, 0);
+  for (std::size_t at = 0; at < products_.size(); ++at) uniform_[at % pairs] += products_[at];
   factor_.resize(static_cast<std::size_t>(elements_ * p_ * n));
   pivot_.resize(static_cast<std::size_t>(elements_ * p_ + 1));
   border_.assign(static_cast<std::size_t>(elements_ * p_ + 1), 0);
@@ -32,14 +37,22 @@ void Factors::element_matrix(int element, double E) {
   const Grid& grid = h_->profile().grid;
   const int n = p_ + 1;
   const double scale = 2 / grid.width(element);
-  const double* product = products_.data();
-  for (int j = 0; j < n; ++j)
-    for (int i = j; i < n; ++i) {
-      double sum = 0;
-      for (int k = 0; k < n; ++k) sum += product[k] * c[k];
-      product += n;
-      matrix_(i, j) = scale * sum;
+  const std::size_t pairs = uniform_.size();
+  bool uniform = true;
+  for (int k = 1; k < n; ++k) uniform = uniform && c[k] == c[0];
+  if (uniform) {
+    for (std::size_t pair = 0; pair < pairs; ++pair) packed_[pair] = scale * c[0] * uniform_[pair];
+  } else {
+    std::fill(packed_.begin(), packed_.end(), 0);
+    for (int k = 0; k < n; ++k) {
+      const double factor = scale * c[k];
+      const double* product = &products_[static_cast<std::size_t>(k) * pairs];
+      for (std::size_t pair = 0; pair < pairs; ++pair) packed_[pair] += factor * product[pair];
     }
+  }
+  const double* entry = packed_.data();
+  for (int j = 0; j < n; ++j)
+    for (int i = j; i < n; ++i) matrix_(i, j) = *entry++;
   for (int i = 0; i < n; ++i) matrix_(i, i) += grid.weight[element * n + i] * q[i];
 }
 

@@ -2,6 +2,7 @@
 // Levels by counting: the shift below a level, bisection, and the cold solve that checks Lanczos by counts.
 #include <algorithm>
 #include <cmath>
+#include <limits>
 #include <random>
 
 #include "levels/pairs.hpp"
@@ -10,35 +11,50 @@
 namespace wellwright {
 namespace {
 
-constexpr double finest = 1e-11;  // [eV] brackets are halved down to this
+constexpr double finest = 1e-11;   // [eV] brackets are halved down to this
+constexpr double furthest = 1e4;   // [eV] above the floor at which the search gives up
+constexpr double nearness = 0.25;  // of the levels' spread: how near the shift lies below the lowest
 
 }  // namespace
 
-double energy_below_level(Counter& counter, int index, double floor) {
-  double low = floor, high = floor, step = 0.02;
-  while (true) {
-    high = low + step;
-    const int count = counter.below(high);
-    if (count > index) break;
-    low = high;
-    step *= 2;
-    if (step > 1e4) throw NotConverged("no further level was found; the stack holds too few on this grid");
+double energy_below_level(Counter& counter, int first, int count, double floor) {
+  double low = floor, high = std::numeric_limits<double>::infinity(), top = floor;
+  int below_low = counter.below(floor);
+  for (double step = 0.1;; step *= 2) {
+    if (step > furthest)
+      throw NotConverged("no further level was found; the stack holds too few on this grid");
+    top = floor + step;
+    const int below = counter.below(top);
+    if (below <= first) {
+      low = top;
+      below_low = below;
+    } else {
+      high = std::min(high, top);
+    }
+    if (below >= first + count) break;
   }
-  const double reach = high - floor;
-  for (int i = 0; i < 60 && high - low > std::max(0.04 * reach, finest); ++i) {
+  while ((below_low < first || high - low > nearness * (top - low)) && high - low > finest) {
     const double middle = 0.5 * (low + high);
-    (counter.below(middle) > index ? high : low) = middle;
+    const int below = counter.below(middle);
+    if (below <= first) {
+      low = middle;
+      below_low = below;
+    } else {
+      high = middle;
+      if (below >= first + count) top = middle;
+    }
   }
   return low;
 }
 
-Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor) {
+Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor,
+                  double enough) {
   Counter counter(factors);
-  const double shift = energy_below_level(counter, first, floor);
+  const double shift = energy_below_level(counter, first, count, floor);
   if (counter.below(shift) == first) {
     Pairs pairs = lanczos(hamiltonian, factors, shift, count);
     Rayleigh rayleigh(hamiltonian, factors);
-    if (pairs.count() == count && rayleigh.polish_all(pairs)) {
+    if (pairs.count() == count && rayleigh.polish_all(pairs, enough)) {
       const double above = pairs.energy[count - 1] + std::max(1e-9, 4 * rayleigh.floor());
       if (counter.below(above) == first + count) return pairs;
       // The uppermost may be one of a group that goes on; what lies below it must be complete.
@@ -63,7 +79,8 @@ Pairs bisection(const Hamiltonian& hamiltonian, Factors& factors, int first, int
   for (;; step *= 2) {
     top = floor + step;
     if (counter.below(top) >= first + count) break;
-    if (step > 1e4) throw NotConverged("no further level was found; the stack holds too few on this grid");
+    if (step > furthest)
+      throw NotConverged("no further level was found; the stack holds too few on this grid");
   }
   std::fill(high.begin(), high.end(), top);
   for (std::size_t k = 0; k < n; ++k)

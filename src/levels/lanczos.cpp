@@ -117,7 +117,7 @@ Pairs lanczos(const Hamiltonian& hamiltonian, Factors& factors, double shift, in
   inverse.perform_op(start.data(), first.data());
   solver.init(first.data());
   const auto found =
-      solver.compute(Spectra::SortRule::LargestAlge, 200, 1e-9, Spectra::SortRule::LargestAlge);
+      solver.compute(Spectra::SortRule::LargestAlge, 200, 1e-6, Spectra::SortRule::LargestAlge);
   if (solver.info() != Spectra::CompInfo::Successful || found < count) return pairs;
   const Eigen::VectorXd energy = solver.eigenvalues();
   const Eigen::MatrixXd vectors = solver.eigenvectors();

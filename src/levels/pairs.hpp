@@ -29,14 +29,15 @@ Eigen::VectorXd lumped_mass(const Hamiltonian& hamiltonian);
 class Rayleigh {
  public:
   Rayleigh(const Hamiltonian& hamiltonian, Factors& factors);
-  /// Improves one pair in place until its residual is rounding; returns false when it does not converge.
-  bool polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual);
+  /// Improves one pair in place until its residual is `enough` [eV], or rounding; returns false when it does
+  /// not converge. The energy is then good to residual^2 over the distance to the next level.
+  bool polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual, double enough = 0);
   /// The same for a cluster of levels within about cluster_width: block inverse iteration and Rayleigh-Ritz.
   bool polish_block(Eigen::Ref<Eigen::VectorXd> energy, Eigen::Ref<Eigen::MatrixXd> psi,
                     Eigen::Ref<Eigen::VectorXd> residual);
   /// Sorts the pairs and polishes all of them, clusters as blocks. False when a pair does not converge or two
   /// pairs fall on one level.
-  bool polish_all(Pairs& pairs);
+  bool polish_all(Pairs& pairs, double enough = 0);
   /// Residual that counts as converged [eV].
   double floor() const { return floor_; }
 
@@ -62,13 +63,14 @@ class Counter {
   Factors* factors_;
 };
 
-/// An energy with exactly `index` levels below it and the next one close above; `floor` has no more than
-/// `index` levels below it.
-double energy_below_level(Counter& counter, int index, double floor);
+/// An energy with exactly `first` levels below it, near the `count` levels that follow as measured by their
+/// spread (except where levels coincide); `floor` has no more than `first` levels below it.
+double energy_below_level(Counter& counter, int first, int count, double floor);
 
 /// The `count` levels from number `first` (0-based from the lowest) by shift-invert Lanczos, checked by
-/// counts; by bisection where Lanczos misses one. Throws NotConverged.
-Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor);
+/// counts; by bisection where Lanczos misses one. Residuals as in Rayleigh::polish. Throws NotConverged.
+Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor,
+                  double enough = 0);
 
 /// Shift-invert Lanczos on (psi, chi): the `count` levels just above `shift`; fewer when it did not converge.
 Pairs lanczos(const Hamiltonian& hamiltonian, Factors& factors, double shift, int count);

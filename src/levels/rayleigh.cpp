@@ -51,7 +51,8 @@ double Rayleigh::norm_of(const Eigen::VectorXd& residual) const {
   return std::sqrt(sum);
 }
 
-bool Rayleigh::polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual) {
+bool Rayleigh::polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual, double enough) {
+  const double goal = std::max(floor_, enough);
   double last = std::numeric_limits<double>::infinity();
   x_ = psi;
   for (int step = 0; step < most_steps; ++step) {
@@ -67,7 +68,7 @@ bool Rayleigh::polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& r
     const double scale = 1 / std::sqrt(norm);
     y_ -= change * slope_;
     residual = scale * norm_of(y_);
-    if (residual <= floor_ || (step > 1 && residual > 0.3 * last && residual < 1e3 * floor_)) {
+    if (residual <= goal || (step > 1 && residual > 0.3 * last && residual < 1e3 * floor_)) {
       psi = scale * x_;
       return std::isfinite(energy);
     }
@@ -132,7 +133,7 @@ bool Rayleigh::polish_block(Eigen::Ref<Eigen::VectorXd> energy, Eigen::Ref<Eigen
   return false;
 }
 
-bool Rayleigh::polish_all(Pairs& pairs) {
+bool Rayleigh::polish_all(Pairs& pairs, double enough) {
   const int n = pairs.count();
   pairs.residual.resize(n);
   const auto sort = [&] {
@@ -154,7 +155,7 @@ bool Rayleigh::polish_all(Pairs& pairs) {
     int end = i + 1;
     while (end < n && pairs.energy[end] - pairs.energy[end - 1] < cluster_width) ++end;
     const int m = end - i;
-    const bool fine = m == 1 ? polish(pairs.energy[i], pairs.psi.col(i), pairs.residual[i])
+    const bool fine = m == 1 ? polish(pairs.energy[i], pairs.psi.col(i), pairs.residual[i], enough)
                              : polish_block(pairs.energy.segment(i, m), pairs.psi.middleCols(i, m),
                                             pairs.residual.segment(i, m));
     if (!fine) return false;

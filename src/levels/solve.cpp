@@ -75,8 +75,11 @@ class Solver {
 
   Pairs cold(const Range& range) {
     return cold_levels(op_->hamiltonian, op_->factors, base_ + range.start(), range.total(),
-                       op_->floor.energy);
+                       op_->floor.energy, enough());
   }
+
+  // Residual that does while the grid still changes: its square over the gaps is far below the accuracy.
+  double enough() const { return std::min(1e-8, 1e-2 * study_.model.accuracy); }
 
   // Decides the range from the request and leaves its pairs in pairs_.
   void find_range() {
@@ -231,7 +234,7 @@ class Solver {
       for (int i = 0; i < previous.count(); ++i)
         pairs_.psi.col(i) = gather(op_->profile.grid, carried.col(i));
       Rayleigh rayleigh(op_->hamiltonian, op_->factors);
-      if (rayleigh.polish_all(pairs_) && complete()) return;
+      if (rayleigh.polish_all(pairs_, enough()) && complete()) return;
     }
     pairs_ = cold(range_);
   }
@@ -251,7 +254,8 @@ class Solver {
   }
 
   Levels finish(const Eigen::VectorXd& estimate, double worst) {
-    const bool is_complete = complete();
+    Rayleigh rayleigh(op_->hamiltonian, op_->factors);
+    const bool is_complete = rayleigh.polish_all(pairs_) && complete();
     Pairs listed;
     listed.energy = pairs_.energy.segment(range_.lower(), range_.count);
     listed.residual = pairs_.residual.segment(range_.lower(), range_.count);
