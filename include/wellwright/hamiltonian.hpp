@@ -43,9 +43,12 @@ class Hamiltonian {
   double highest_pole_, norm_, lowest_edge_, highest_edge_;
 };
 
-/// LDL' factors of T(E), element by element: the inner nodes of each element are eliminated, then its left
-/// node, so that the work and the memory are linear in the elements. Reused for many energies without
-/// allocation.
+/// The same number of four neighbouring elements: the arithmetic of all elements runs in packs of four.
+using Lanes = Eigen::Array4d;
+
+/// LDL' factors of T(E): the inner nodes of each element are eliminated, four elements at a time, then the
+/// chain of element boundaries, so that the work and the memory are linear in the elements. Reused for many
+/// energies without allocation.
 class Factors {
  public:
   explicit Factors(const Hamiltonian& hamiltonian);
@@ -64,21 +67,28 @@ class Factors {
   int inner_negative() const { return inner_negative_; }
 
  private:
-  void element_matrix(int element, double E);
+  struct Face {
+    double left_left = 0, left_right = 0, right_right = 0;  // an element condensed to its boundaries
+  };
+  void pack_matrix(int pack, double E);
+  void eliminate_inner(int pack);
+  void eliminate_chain(double cos_phase);
 
   const Hamiltonian* h_;
-  int p_, elements_;
+  int p_, elements_, packs_;
   bool periodic_;
+  double tiny_;
   int negative_ = 0, inner_negative_ = 0;
   double face_[3] = {0, 0, 0};    // S00, S0N, SNN
   double last_ = 0;               // pivot of the identified face node
-  Eigen::MatrixXd matrix_;        // of one element, while it is eliminated
-  std::vector<double> products_;  // w_q D_qi D_qj of the reference element, pairs i >= j within q
+  std::vector<int> order_;        // local nodes: the inner ones, then left, right
+  std::vector<int> column_;       // where column j of the packed lower triangle starts
+  std::vector<double> products_;  // w_q D_qi D_qj of the reference element, packed within q
   std::vector<double> uniform_;   // the same summed over q, for constant mass
-  std::vector<double> packed_;    // lower triangle of one element
-  std::vector<double> factor_;    // per element: columns of the unit lower factor, p columns of p + 1
-  std::vector<double> pivot_;     // per global node 0..N-1
-  std::vector<double> border_;    // coupling of each node to node 0 over its pivot (periodic)
+  std::vector<Lanes> matrix_;     // of the present pack, packed lower triangle
+  std::vector<Lanes> factor_;     // per pack and inner node: 1 / pivot, then the column of the unit factor
+  std::vector<Face> condensed_;   // per element
+  std::vector<double> pivot_, step_, border_;  // per chain node: pivot, coupling upward and to node 0 over it
 };
 
 /// From element-local to global nodes and back.

@@ -77,28 +77,50 @@ void Hamiltonian::element_coefficients(int element, double E, double* stiffness,
 
 void Hamiltonian::apply(double E, const Eigen::VectorXd& x, Eigen::VectorXd& y,
                         Eigen::VectorXd* slope) const {
+  constexpr int lanes = 4;
   const Grid& grid = profile_->grid;
-  const ReferenceElement& reference = reference_element(grid.degree);
-  const int p = grid.degree, n = p + 1;
+  const int p = grid.degree, n = p + 1, elements = grid.elements();
+  const double* D = reference_element(p).derivative.data();  // (q, i) column by column
   double c[highest_degree + 1], q[highest_degree + 1], dc[highest_degree + 1], dq[highest_degree + 1];
-  Eigen::Matrix<double, Eigen::Dynamic, 1, 0, highest_degree + 1, 1> u(n), du(n), flux(n), d_flux(n);
+  Lanes u[highest_degree + 1], flux[highest_degree + 1], d_flux[highest_degree + 1], mass[highest_degree + 1],
+      d_mass[highest_degree + 1];
   y.setZero(nodes());
   if (slope) slope->setZero(nodes());
-  for (int e = 0; e < grid.elements(); ++e) {
-    element_coefficients(e, E, c, q, dc, dq);
-    const double scale = 2 / grid.width(e);
-    u = x.segment(e * p, n);
-    du.noalias() = scale * (reference.derivative * u);
+  for (int first = 0; first < elements; first += lanes) {
+    const int valid = std::min(lanes, elements - first);
     for (int i = 0; i < n; ++i) {
-      const double w = grid.weight[e * n + i] * du[i];
-      flux[i] = w * c[i];
-      d_flux[i] = w * dc[i];
+      u[i].setZero();
+      for (int t = 0; t < valid; ++t) u[i][t] = x[(first + t) * p + i];
+      flux[i].setZero();
     }
-    y.segment(e * p, n).noalias() += scale * (reference.derivative.transpose() * flux);
-    for (int i = 0; i < n; ++i) y[e * p + i] += grid.weight[e * n + i] * q[i] * u[i];
-    if (!slope) continue;
-    slope->segment(e * p, n).noalias() += scale * (reference.derivative.transpose() * d_flux);
-    for (int i = 0; i < n; ++i) (*slope)[e * p + i] += grid.weight[e * n + i] * dq[i] * u[i];
+    for (int i = 0; i < n; ++i)
+      for (int k = 0; k < n; ++k) flux[k] += D[i * n + k] * u[i];
+    for (int t = 0; t < lanes; ++t) {
+      if (t >= valid) {
+        for (int k = 0; k < n; ++k) flux[k][t] = d_flux[k][t] = mass[k][t] = d_mass[k][t] = 0;
+        continue;
+      }
+      const int e = first + t;
+      element_coefficients(e, E, c, q, dc, dq);
+      const double scale = 4 / (grid.width(e) * grid.width(e));
+      for (int k = 0; k < n; ++k) {
+        const double w = grid.weight[e * n + k], du = scale * w * flux[k][t];
+        flux[k][t] = du * c[k];
+        d_flux[k][t] = du * dc[k];
+        mass[k][t] = w * q[k];
+        d_mass[k][t] = w * dq[k];
+      }
+    }
+    for (int i = 0; i < n; ++i) {
+      Lanes sum = mass[i] * u[i];
+      for (int k = 0; k < n; ++k) sum += D[i * n + k] * flux[k];
+      for (int t = 0; t < valid; ++t) y[(first + t) * p + i] += sum[t];
+      if (!slope) continue;
+      sum = d_mass[i] * u[i];
+      if (poles() > 0)
+        for (int k = 0; k < n; ++k) sum += D[i * n + k] * d_flux[k];
+      for (int t = 0; t < valid; ++t) (*slope)[(first + t) * p + i] += sum[t];
+    }
   }
   const int N = nodes() - 1;
   for (auto* out : {&y, slope}) {

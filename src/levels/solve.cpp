@@ -190,6 +190,12 @@ class Solver {
           history = {};
           continue;
         }
+        if (!settled()) {  // a level was missed on the way
+          pairs_ = cold(range_);
+          if (!complete() || ++recoveries_ > 2) return finish(estimate, worst);
+          history = {pairs_.energy};
+          continue;
+        }
         return finish(estimate, worst);
       }
     }
@@ -234,7 +240,7 @@ class Solver {
       for (int i = 0; i < previous.count(); ++i)
         pairs_.psi.col(i) = gather(op_->profile.grid, carried.col(i));
       Rayleigh rayleigh(op_->hamiltonian, op_->factors);
-      if (rayleigh.polish_all(pairs_, enough()) && complete()) return;
+      if (rayleigh.polish_all(pairs_, enough())) return;  // counted at the end
     }
     pairs_ = cold(range_);
   }
@@ -243,6 +249,12 @@ class Solver {
   bool complete() {
     const double bottom = window_bottom(), top = window_top();
     return below(bottom) == range_.first && below(top) == range_.first + range_.count;
+  }
+  // The same with pairs polished to rounding.
+  bool settled() {
+    Rayleigh rayleigh(op_->hamiltonian, op_->factors);
+    settled_ = settled_ || (rayleigh.polish_all(pairs_) && complete());
+    return settled_;
   }
   double window_bottom() const {
     return range_.lower() == 1 ? 0.5 * (pairs_.energy[0] + pairs_.energy[1]) : op_->floor.energy;
@@ -254,8 +266,7 @@ class Solver {
   }
 
   Levels finish(const Eigen::VectorXd& estimate, double worst) {
-    Rayleigh rayleigh(op_->hamiltonian, op_->factors);
-    const bool is_complete = rayleigh.polish_all(pairs_) && complete();
+    const bool is_complete = settled();
     Pairs listed;
     listed.energy = pairs_.energy.segment(range_.lower(), range_.count);
     listed.residual = pairs_.residual.segment(range_.lower(), range_.count);
@@ -328,7 +339,8 @@ class Solver {
   Pairs pairs_;
   Range range_;
   int base_ = 0;  // levels below the floor: none, but for a broken gap
-  int halvings_ = 0;
+  int halvings_ = 0, recoveries_ = 0;
+  bool settled_ = false;
 };
 
 }  // namespace
