@@ -79,7 +79,8 @@ inline Spectrum spectrum(const Stack& stack, double top, bool weights = false, d
   bottom = 0;
   const double reach = std::max(top, highest) - lowest;
   for (const Layer& layer : stack.layers) {
-    const double mass = std::max(layer.medium.mass, layer.top.mass) * (stack.bands > 1 ? 1.4 : 1);
+    const double mass = 1 / static_cast<double>(std::min(plain::inverse_mass(layer.medium, stack.bands, top),
+                                                         plain::inverse_mass(layer.top, stack.bands, top)));
     const double k = std::sqrt(reach * mass / static_cast<double>(plain::K));
     const int pieces = std::max(1, static_cast<int>(std::ceil(layer.thickness * k / radians)));
     for (int i = 0; i < pieces; ++i)

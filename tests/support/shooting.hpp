@@ -225,10 +225,12 @@ class Shooter {
         psi.c[i + 1] = a / static_cast<Real>(i + 1);
         w.c[i + 1] = b / static_cast<Real>(i + 1);
       }
-      // The last terms stay below 1e-21 of the largest.
+      // The last terms stay below 1e-21 of the largest: as many as can vanish in a row, since z and the
+      // grading are powers of s.
       Real h = std::min(longest, std::abs(end - s));
+      const auto looked_at = static_cast<std::size_t>(std::max(2, n + 1));
       const auto limit = [&](const Series& f) {
-        for (std::size_t i = order - 1; i <= order; ++i)
+        for (std::size_t i = order + 1 - looked_at; i <= order; ++i)
           while (std::abs(f.c[i]) * std::pow(h, static_cast<Real>(i)) >
                  1e-21L * (std::abs(f.c[0]) + std::abs(f.c[1]) * h))
             h *= 0.9L;

@@ -7,7 +7,7 @@
 #include <string>
 
 #include "support/plain_stack.hpp"
-#include "wellwright/study.hpp"
+#include "wellwright/levels.hpp"
 
 namespace plain {
 
@@ -78,6 +78,44 @@ inline wellwright::Carrier carrier_of(const Stack& stack) {
   constexpr wellwright::Carrier carriers[] = {wellwright::Carrier::electron, wellwright::Carrier::heavy_hole,
                                               wellwright::Carrier::light_hole};
   return carriers[static_cast<int>(stack.carrier)];
+}
+
+/// What the references need to know of a study of uniform, unsmeared layers, table values included.
+inline Stack stack_of(const wellwright::Study& study, wellwright::Carrier carrier) {
+  const wellwright::Stack& from = study.stack;
+  Stack stack;
+  stack.field = study.field;
+  stack.carrier = static_cast<Carrier>(carrier);
+  const bool electron = carrier == wellwright::Carrier::electron,
+             heavy = stack.carrier == Carrier::heavy_hole;
+  stack.bands = electron ? static_cast<int>(study.model.bands) : 1;
+  stack.periodic = study.model.ends == wellwright::Ends::periodic;
+  double highest = -1e300;
+  for (const auto& b : from.bands) highest = std::max(highest, heavy ? b.heavy_hole_edge : b.light_hole_edge);
+  for (std::size_t i = 0; i < from.layers.size(); ++i) {
+    const wellwright::BandParameters& b = from.bands[i];
+    Medium m;
+    m.gap = b.band_gap, m.split_off = b.spin_orbit_splitting;
+    if (electron) {
+      m.edge = b.conduction_band_edge, m.mass = b.electron_mass, m.in_plane_mass = b.electron_in_plane_mass;
+      const double upper = stack.bands == 3 ? b.light_hole_edge : b.mean_valence_edge;
+      m.valence_shift = upper - (m.edge - m.gap);
+      m.split_off_shift = b.split_off_edge - (m.edge - m.gap - m.split_off);
+    } else {
+      m.edge = highest - (heavy ? b.heavy_hole_edge : b.light_hole_edge);
+      m.mass = heavy ? b.heavy_hole_mass : b.light_hole_mass;
+      m.in_plane_mass = heavy ? b.heavy_hole_in_plane_mass : b.light_hole_in_plane_mass;
+    }
+    stack.layers.push_back(uniform(m, from.layers[i].thickness));
+  }
+  return stack;
+}
+
+/// Levels of a plain stack as the program finds them.
+inline wellwright::Levels levels_of(const Stack& stack, const std::string& levels = "6",
+                                    const std::string& accuracy = "1e-9 eV") {
+  wellwright::Notes notes;
+  return wellwright::solve_levels(study_of(stack, levels, accuracy), carrier_of(stack), notes, {});
 }
 
 }  // namespace plain
