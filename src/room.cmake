@@ -29,6 +29,9 @@ _library(tbb TBB::tbb)
 # Flags for our own code only.
 add_library(wellwright_flags INTERFACE)
 target_compile_options(wellwright_flags INTERFACE -Wall -Wextra -Wpedantic -Wshadow -Wconversion -Wno-sign-conversion)
+if(CMAKE_CXX_COMPILER_ID STREQUAL "GNU" AND CMAKE_CXX_COMPILER_VERSION VERSION_LESS 13)
+  target_compile_options(wellwright_flags INTERFACE -Wno-restrict)  # false alarms on std::string, GCC bug 105651
+endif()
 if(WELLWRIGHT_STRICT)
   target_compile_options(wellwright_flags INTERFACE -Werror)
 endif()

@@ -12,13 +12,14 @@
 namespace wellwright {
 
 /// Where something stands: file (or "--set"), line and column counted from 1 in characters; `line_text` is
-/// that line.
+/// that line, of a very long one a part that begins after `skipped` characters.
 struct Place {
   std::string file;
   int line = 0;
   int column = 0;
   std::string line_text;
-  int length = 1;  ///< characters marked by the caret line
+  int length = 1;   ///< characters marked by the caret line
+  int skipped = 0;  ///< characters of the line before line_text
 };
 
 /// A mistake in what the user wrote. what() is the whole message as printed: place, sentence, quoted line

@@ -77,7 +77,7 @@ struct Node::Entry {
 /// Limits on hostile input; every refusal names the limit.
 struct InputLimits {
   std::size_t file_bytes = 8u << 20;
-  std::size_t nodes = 2'000'000;  ///< after alias expansion
+  std::size_t nodes = 600'000;  ///< after alias expansion
   int depth = 64;
 };
 

@@ -1,0 +1,105 @@
+// SPDX-License-Identifier: Apache-2.0
+// Lines, places and the check that a text is text.
+#include "input/lines.hpp"
+
+#include <fmt/format.h>
+
+#include <algorithm>
+
+namespace wellwright {
+namespace {
+
+constexpr std::size_t longest_kept = 400;  // bytes of a line kept with each place
+constexpr std::size_t kept_before = 160;   // of which before the place
+
+bool continues(char c) {
+  return (static_cast<unsigned char>(c) & 0xC0u) == 0x80u;
+}
+
+// Bytes of the UTF-8 character at `at`, 0 when broken.
+std::size_t character_length(std::string_view text, std::size_t at) {
+  const auto lead = static_cast<unsigned char>(text[at]);
+  const std::size_t length = lead < 0x80                   ? 1
+                             : lead >= 0xC2 && lead < 0xE0 ? 2
+                             : (lead & 0xF0u) == 0xE0      ? 3
+                             : lead >= 0xF0 && lead < 0xF5 ? 4
+                                                           : 0;
+  if (length == 0 || at + length > text.size()) return 0;
+  for (std::size_t i = 1; i < length; ++i)
+    if (!continues(text[at + i])) return 0;
+  return length;
+}
+
+}  // namespace
+
+int characters(std::string_view text) {
+  return static_cast<int>(std::count_if(text.begin(), text.end(), [](char c) { return !continues(c); }));
+}
+
+Lines::Lines(std::string_view text, std::string file) : file_(std::move(file)) {
+  if (text.starts_with("\xEF\xBB\xBF")) text.remove_prefix(3);
+  text_.reserve(text.size());
+  for (std::size_t i = 0; i < text.size(); ++i) {
+    if (text[i] != '\r') {
+      text_ += text[i];
+      continue;
+    }
+    text_ += '\n';
+    if (i + 1 < text.size() && text[i + 1] == '\n') ++i;
+  }
+  starts_.push_back(0);
+  for (std::size_t i = 0; i < text_.size(); ++i)
+    if (text_[i] == '\n') starts_.push_back(i + 1);
+  check();
+}
+
+std::string_view Lines::line(int number) const {
+  const auto at = static_cast<std::size_t>(std::clamp(number, 0, static_cast<int>(starts_.size()) - 1));
+  const std::size_t start = starts_[at];
+  const std::size_t end = at + 1 < starts_.size() ? starts_[at + 1] - 1 : text_.size();
+  return std::string_view(text_).substr(start, end - start);
+}
+
+Place Lines::place(int number, std::size_t byte, int length) const {
+  const std::string_view whole = line(number);
+  byte = std::min(byte, whole.size());
+  Place place;
+  place.file = file_;
+  place.line = std::clamp(number, 0, static_cast<int>(starts_.size()) - 1) + 1;
+  place.column = characters(whole.substr(0, byte)) + 1;
+  place.length = std::max(1, length);
+  std::size_t first = 0, last = whole.size();
+  if (last > longest_kept) {
+    first = byte > kept_before ? byte - kept_before : 0;
+    while (first > 0 && continues(whole[first])) --first;
+    last = std::min(last, first + longest_kept);
+    while (last < whole.size() && continues(whole[last])) --last;
+  }
+  place.skipped = characters(whole.substr(0, first));
+  place.line_text = std::string(whole.substr(first, last - first));
+  return place;
+}
+
+void Lines::check() const {
+  for (std::size_t number = 0; number < starts_.size(); ++number) {
+    const int row = static_cast<int>(number);
+    const std::string_view whole = line(row);
+    for (std::size_t at = 0; at < whole.size();) {
+      const auto byte = static_cast<unsigned char>(whole[at]);
+      if ((byte < 0x20 && byte != '\t') || byte == 0x7F)
+        throw InputError(fmt::format("this is no text: it holds the byte 0x{:02X}", byte), place(row, at),
+                         "a study is a plain text file");
+      const std::size_t length = character_length(whole, at);
+      if (length == 0)
+        throw InputError(fmt::format("the byte 0x{:02X} is no UTF-8", byte), place(row, at),
+                         "save the file in UTF-8");
+      at += length;
+    }
+    const std::size_t indent = std::min(whole.find_first_not_of(" \t"), whole.size());
+    const std::size_t tab = whole.substr(0, indent).find('\t');
+    if (tab != std::string_view::npos && indent < whole.size() && whole[indent] != '#')
+      throw InputError("a tab stands in the indentation", place(row, tab), "indent with blanks");
+  }
+}
+
+}  // namespace wellwright

@@ -1,0 +1,33 @@
+// SPDX-License-Identifier: Apache-2.0
+// The lines of an input text and places in them; private to the room.
+#pragma once
+
+#include <string>
+#include <string_view>
+#include <vector>
+
+#include "wellwright/diagnostics.hpp"
+
+namespace wellwright {
+
+/// A text cleaned of its byte order mark and carriage returns, cut into lines.
+class Lines {
+ public:
+  /// Throws InputError where the text is no text: NUL and control bytes, broken UTF-8, tabs as indentation.
+  Lines(std::string_view text, std::string file);
+  const std::string& text() const { return text_; }
+  /// The place at a 0-based line and a byte of that line.
+  Place place(int line, std::size_t byte, int length = 1) const;
+
+ private:
+  void check() const;
+  std::string_view line(int number) const;
+
+  std::string text_, file_;
+  std::vector<std::size_t> starts_;
+};
+
+/// Characters (not bytes) of UTF-8 text.
+int characters(std::string_view text);
+
+}  // namespace wellwright
