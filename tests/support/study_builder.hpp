@@ -42,8 +42,13 @@ inline std::string study_yaml(const Stack& stack, const std::string& levels, con
     const std::string text = medium_yaml(medium, stack);
     const auto found = names.find(text);
     if (found != names.end()) return found->second;
-    const std::string name = "Medium" + std::to_string(names.size() + 1);
-    materials += "  " + name + ": " + text + "\n";
+    std::string name = "Medium";
+    name += std::to_string(names.size() + 1);
+    materials += "  ";
+    materials += name;
+    materials += ": ";
+    materials += text;
+    materials += "\n";
     return names[text] = name;
   };
   for (const Layer& layer : stack.layers) {
