@@ -25,7 +25,10 @@ class Hamiltonian {
   double k() const { return k_; }
   /// The highest pole anywhere: above it the count of negative pivots is the count of levels [eV].
   double highest_pole() const { return highest_pole_; }
-  double norm() const { return norm_; }  ///< bound of the mass-scaled operator, for rounding errors [eV]
+  double norm() const { return norm_; }  ///< bound of the mass-scaled operator [eV]
+  /// The same without the elements that shrink towards a face: there the envelope is smooth on the layer's
+  /// own elements, and what rounding does to an energy goes by those [eV].
+  double rounding_norm() const { return rounding_norm_; }
   double lowest_edge() const { return lowest_edge_; }
   double highest_edge() const { return highest_edge_; }
 
@@ -40,7 +43,7 @@ class Hamiltonian {
  private:
   const Profile* profile_;
   double k_;
-  double highest_pole_, norm_, lowest_edge_, highest_edge_;
+  double highest_pole_, norm_, rounding_norm_, lowest_edge_, highest_edge_;
 };
 
 /// The same number of four neighbouring elements: the arithmetic of all elements runs in packs of four.

@@ -30,7 +30,14 @@ Hamiltonian::Hamiltonian(const Profile& profile, double k) : profile_(&profile),
     row_sum[i] = sum / reference.weights[i];
   }
   const double largest = row_sum.maxCoeff();
-  norm_ = 0;
+  norm_ = rounding_norm_ = 0;
+  int layers = 0;
+  for (const int layer : grid.layer) layers = std::max(layers, layer + 1);
+  std::vector<double> widest(static_cast<std::size_t>(layers), 0);
+  for (int e = 0; e < grid.elements(); ++e) {
+    double& width = widest[static_cast<std::size_t>(grid.layer[static_cast<std::size_t>(e)])];
+    width = std::max(width, grid.width(e));
+  }
   for (int e = 0; e < grid.elements(); ++e) {
     double inverse_mass = 0;
     for (int i = 0; i < n; ++i) {
@@ -42,7 +49,10 @@ Hamiltonian::Hamiltonian(const Profile& profile, double k) : profile_(&profile),
     }
     const double h = grid.width(e);
     norm_ = std::max(norm_, hbar2_over_2m0 * inverse_mass * 4 * largest / (h * h));
+    const double wide = widest[static_cast<std::size_t>(grid.layer[static_cast<std::size_t>(e)])];
+    rounding_norm_ = std::max(rounding_norm_, hbar2_over_2m0 * inverse_mass * 4 * largest / (wide * wide));
   }
+  rounding_norm_ += highest_edge_ - lowest_edge_;
   norm_ += highest_edge_ - lowest_edge_;
 }
 

@@ -48,6 +48,7 @@ class Rayleigh {
   Factors* factors_;
   Eigen::VectorXd mass_, x_, y_, slope_;
   double floor_;
+  double stagnation_;  // below this a residual that falls no more is rounding
 };
 
 /// Counts of levels below an energy, kept so that none is taken twice.

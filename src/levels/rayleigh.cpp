@@ -42,7 +42,8 @@ Rayleigh::Rayleigh(const Hamiltonian& hamiltonian, Factors& factors)
       x_(hamiltonian.nodes()),
       y_(hamiltonian.nodes()),
       slope_(hamiltonian.nodes()),
-      floor_(16 * eps * hamiltonian.norm()) {}
+      floor_(16 * eps * hamiltonian.rounding_norm()),
+      stagnation_(1e4 * eps * hamiltonian.norm()) {}
 
 double Rayleigh::norm_of(const Eigen::VectorXd& residual) const {
   double sum = 0;
@@ -68,7 +69,7 @@ bool Rayleigh::polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& r
     const double scale = 1 / std::sqrt(norm);
     y_ -= change * slope_;
     residual = scale * norm_of(y_);
-    if (residual <= goal || (step > 1 && residual > 0.3 * last && residual < 1e3 * floor_)) {
+    if (residual <= goal || (step > 1 && residual > 0.3 * last && residual < stagnation_)) {
       psi = scale * x_;
       return std::isfinite(energy);
     }
@@ -112,7 +113,7 @@ bool Rayleigh::polish_block(Eigen::Ref<Eigen::VectorXd> energy, Eigen::Ref<Eigen
       residual[j] = norm_of(y_);
     }
     const double worst = residual.maxCoeff();
-    if (worst <= floor_ || (step > 3 && worst > 0.3 * last && worst < 1e3 * floor_)) return true;
+    if (worst <= floor_ || (step > 3 && worst > 0.3 * last && worst < stagnation_)) return true;
     last = worst;
     factors_->compute(E);
     for (Eigen::Index j = 0; j < m; ++j) {

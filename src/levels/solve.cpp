@@ -205,7 +205,7 @@ class Solver {
   // True where raising the degree no longer helps: the ratio stayed high twice.
   static bool settling(const std::vector<Eigen::VectorXd>& history) { return history.size() >= 4; }
 
-  double noise_of() const { return 8 * eps * op_->hamiltonian.norm(); }
+  double noise_of() const { return 8 * eps * op_->hamiltonian.rounding_norm(); }
 
   // 2 |dE| / (1 - r) + 8 eps ||A||: the differences of successive degrees fall at least like r^n. Infinite
   // where r > 0.5.

@@ -14,6 +14,7 @@ namespace {
 constexpr double radians_per_element = 5, decay_lengths_per_element = 7;
 constexpr double shrink = 0.2;  // elements towards a face where the grading is not analytic
 constexpr int shrinking_elements = 8;
+constexpr double narrowest = 1e-5;  // [nm] of a shrinking element: boundaries are known to 1e-14 nm
 constexpr double mass_floor = 1e-3;
 
 struct Slab {  // one layer as the division sees it
@@ -96,6 +97,7 @@ std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier,
     double part = 1.0 / pieces;
     for (int j = 0; j < shrinking_elements; ++j) {
       part *= shrink;
+      if (part * slab.thickness < narrowest) break;
       cuts[i].push_back(stack.layers[i].grading->vertex_on_top ? 1 - part : part);
     }
     std::sort(cuts[i].begin(), cuts[i].end());
