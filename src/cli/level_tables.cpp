@@ -1,0 +1,120 @@
+// SPDX-License-Identifier: Apache-2.0
+// Levels, minibands and the certificate.
+#include <fmt/format.h>
+
+#include <algorithm>
+#include <cmath>
+#include <numeric>
+
+#include "cli/summary.hpp"
+#include "cli/table.hpp"
+#include "cli/text.hpp"
+
+namespace wellwright::cli {
+namespace {
+
+constexpr int most_levels = 40;        // rows of the table
+constexpr double worth_saying = 0.15;  // part of a level in a second layer
+
+// "wide well 55 %, narrow well 43 %"
+std::string home_of(const Study& study, const Levels& levels, int level) {
+  const auto layers = study.stack.layers.size();
+  std::vector<int> order(layers);
+  std::iota(order.begin(), order.end(), 0);
+  const auto part = [&](int layer) { return levels.layer_probability(level, layer); };
+  const auto shown = std::min<std::size_t>(2, layers);
+  std::partial_sort(order.begin(), order.begin() + static_cast<std::ptrdiff_t>(shown), order.end(),
+                    [&](int a, int b) { return part(a) > part(b); });
+  std::string text;
+  for (std::size_t i = 0; i < shown; ++i) {
+    const int layer = order[i];
+    if (i > 0 && part(layer) < worth_saying) break;
+    text += (i > 0 ? ", " : "") +
+            fmt::format("{} {:.0f} %", study.stack.layers[static_cast<std::size_t>(layer)].label(layer + 1),
+                        part(layer) * 100);
+  }
+  return text;
+}
+
+std::string group_of(const Levels& levels, int level) {
+  std::string partners;
+  for (int other = 0; other < levels.count(); ++other)
+    if (other != level &&
+        levels.group[static_cast<std::size_t>(other)] == levels.group[static_cast<std::size_t>(level)])
+      partners += fmt::format("{}{}", partners.empty() ? "" : ", ", other + 1);
+  return partners.empty() ? "" : "one energy with " + partners;
+}
+
+}  // namespace
+
+std::string level_table(const Answer& answer, const CarrierAnswer& part, int width) {
+  const Levels& levels = part.levels;
+  const auto name = name_of(levels.profile.carrier);
+  const bool hole = levels.profile.carrier != Carrier::electron;
+  std::string text = fmt::format("Levels of the {}{}\n", name,
+                                 hole ? ", energies downward from the highest valence band edge" : "");
+  if (levels.count() == 0) return text + "  none in the window\n";
+  Table table({{"level", "", Align::number},
+               {"energy", "meV"},
+               {"lives in", "", Align::left},
+               {"mean z", "nm"},
+               {"spread", "nm"},
+               {"mass in plane", "m0", Align::number, 1},
+               {"", "", Align::left}});
+  bool box = false;
+  for (int i = 0; i < std::min(levels.count(), most_levels); ++i) {
+    const double error = std::max(levels.error_estimate(i), answer.study.model.accuracy) * 1e3;
+    std::string remark = group_of(levels, i);
+    if (answer.study.model.ends == Ends::hard && levels.bound[static_cast<std::size_t>(i)] == 0) {
+      remark += remark.empty() ? "box" : ", box";
+      box = true;
+    }
+    table.add({std::to_string(i + 1), to_error(levels.energy(i) * 1e3, error),
+               home_of(answer.study, levels, i), fmt::format("{:.2f}", levels.mean_position(i)),
+               fmt::format("{:.2f}", levels.spread(i)),
+               std::isfinite(levels.in_plane_mass(i)) ? fmt::format("{:.4f}", levels.in_plane_mass(i)) : "",
+               remark});
+  }
+  if (levels.count() > most_levels)
+    table.add_remark(fmt::format("... {} more in the result file", levels.count() - most_levels));
+  text += table.text(width);
+  if (box) text += "  box: above the lower outer band edge, held by the hard ends alone\n";
+  return text;
+}
+
+std::string miniband_table(const CarrierAnswer& part, int width) {
+  if (!part.minibands) return "";
+  Table table({{"miniband"}, {"bottom", "meV"}, {"top", "meV"}, {"width", "meV"}});
+  const auto& energy = part.minibands->energy;
+  for (Eigen::Index band = 0; band < std::min<Eigen::Index>(energy.rows(), most_levels); ++band) {
+    const double bottom = energy.row(band).minCoeff() * 1e3, top = energy.row(band).maxCoeff() * 1e3;
+    table.add({std::to_string(band + 1), fmt::format("{:.3f}", bottom), fmt::format("{:.3f}", top),
+               significant(top - bottom, 4)});
+  }
+  return fmt::format("Minibands of the {}\n", name_of(part.levels.profile.carrier)) + table.text(width);
+}
+
+std::string certificate_text(const Answer& answer, int width) {
+  std::string text;
+  for (const auto& part : answer.carriers) {
+    const Levels& levels = part.levels;
+    const Certificate& sure = levels.certificate;
+    const auto name = name_of(levels.profile.carrier);
+    const double error = levels.count() > 0 ? levels.error_estimate.maxCoeff() : 0;
+    std::string line = fmt::format("{} of the {}", counted(levels.count(), "level"), name);
+    if (!answer.study.model.levels.in_layers.empty()) line += " in the named layers";
+    if (!sure.certified) {
+      line += ", not certified: " + (sure.reason.empty() ? "some may be missing" : sure.reason);
+    } else if (sure.count_below == 0) {
+      line += fmt::format(" below {:.3f} eV, none missing", sure.window_top);
+    } else {
+      line += fmt::format(" between {:.3f} and {:.3f} eV, none missing ({} lower)", sure.window_bottom,
+                          sure.window_top, counted(sure.count_below, "level"));
+    }
+    if (levels.count() > 0) line += fmt::format("; largest error estimate {:.1g} eV", error);
+    text += wrapped(line + ".", width, 0, 2);
+  }
+  return text;
+}
+
+}  // namespace wellwright::cli
