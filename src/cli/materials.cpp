@@ -20,8 +20,7 @@ using nlohmann::ordered_json;
 // A text of the command line with the option it stands after, as a place for messages.
 Place place_of(const std::string& option, const std::string& text) {
   Place place;
-  place.file = option;
-  place.line = 1;
+  place.file = option;  // without a line: the text is all there is
   place.column = 1;
   place.line_text = text;
   place.length = std::max(1, displayed_width(text));
@@ -173,7 +172,7 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
 int show_match(const Request& request, const MaterialTable& table) {
   const Alloy substrate = table.alloy(request.matched_to, place_of("--matched-to", request.matched_to));
   const Alloy alloy =
-      table.lattice_matched(request.operand, substrate, place_of("materials", request.operand));
+      table.lattice_matched(request.operand, substrate, place_of("wellwright materials", request.operand));
   if (request.json) {
     std::fputs(
         (ordered_json{
@@ -195,7 +194,7 @@ int materials(const Request& request) {
   const MaterialTable table = table_for(request);
   if (request.operand.empty()) return list_table(request, table);
   if (!request.matched_to.empty()) return show_match(request, table);
-  return show_alloy(request, table, table.alloy(request.operand, place_of("materials", request.operand)));
+  return show_alloy(request, table, table.alloy(request.operand, place_of("wellwright materials", request.operand)));
 }
 
 }  // namespace wellwright::cli
