@@ -18,12 +18,12 @@ inline std::string digits(double value) {
   return text;
 }
 
-/// `medium` as the electron or the hole of this stack sees it. For holes the valence edge lies at -edge; the
-/// conduction edge follows with the gap.
+/// `medium` as the electron or the hole of this stack sees it. For holes the valence edge lies at -edge and
+/// the conduction edge at 1.5 eV + edge, so that a grading starts from the same face for both.
 inline std::string medium_yaml(const Medium& medium, const Stack& stack) {
   const bool electron = stack.carrier == Carrier::electron;
-  const double gap = electron ? medium.gap : 1.5;
-  std::string text = "{conduction_band_edge: " + digits(electron ? medium.edge : gap - medium.edge) +
+  const double gap = electron ? medium.gap : 1.5 + 2 * medium.edge;
+  std::string text = "{conduction_band_edge: " + digits(electron ? medium.edge : 1.5 + medium.edge) +
                      " eV, band_gap: " + digits(gap) +
                      " eV, spin_orbit_splitting: " + digits(medium.split_off) + " eV, permittivity: 12.9";
   const char* kind = electron                               ? "electron"

@@ -88,7 +88,7 @@ TEST_CASE("thickness, composition and field derivatives against shooting") {
       const int layers = static_cast<int>(study.stack.layers.size());
       for (int layer = 0; layer < layers; ++layer) {
         const std::string address = "layers." + std::to_string(layer + 1);
-        const auto thickness = difference(study, address + ".thickness", 0.02, 4, shoot);
+        const auto thickness = difference(study, address + ".thickness", 0.005, 4, shoot);
         CAPTURE(address);
         for (int n = 0; n < 4; ++n) {
           CAPTURE(n);
@@ -102,14 +102,14 @@ TEST_CASE("thickness, composition and field derivatives against shooting") {
           CHECK(std::isnan(found.composition(0, layer)));
           continue;
         }
-        const auto composition = difference(study, address + ".composition", 2e-3, 4, shoot);
+        const auto composition = difference(study, address + ".composition", 4e-4, 4, shoot);
         for (int n = 0; n < 4; ++n) {
           CAPTURE(n, "composition");
           close(found.composition(n, layer), composition[static_cast<std::size_t>(n)]);
         }
       }
       if (!study.bias) {
-        const auto field = difference(study, "field", 1e-5, 4, shoot);
+        const auto field = difference(study, "field", 2e-6, 4, shoot);
         for (int n = 0; n < 4; ++n) close(found.field[n], field[static_cast<std::size_t>(n)]);
       }
     }
@@ -129,11 +129,11 @@ TEST_CASE("derivatives of hole levels against shooting") {
   const auto shoot = [&](const wellwright::Study& moved) { return by_shooting(moved, carrier, 4); };
   for (int layer = 0; layer < 5; ++layer) {
     const auto slope =
-        difference(study, "layers." + std::to_string(layer + 1) + ".thickness", 0.02, 4, shoot);
+        difference(study, "layers." + std::to_string(layer + 1) + ".thickness", 0.005, 4, shoot);
     for (int n = 0; n < 4; ++n) close(found.thickness(n, layer), slope[static_cast<std::size_t>(n)]);
   }
-  const auto slope = difference(study, "layers.3.composition", 2e-3, 4, shoot);
-  const auto field = difference(study, "field", 1e-5, 4, shoot);
+  const auto slope = difference(study, "layers.3.composition", 4e-4, 4, shoot);
+  const auto field = difference(study, "field", 2e-6, 4, shoot);
   for (int n = 0; n < 4; ++n) {
     close(found.composition(n, 2), slope[static_cast<std::size_t>(n)]);
     close(found.field[n], field[static_cast<std::size_t>(n)]);
