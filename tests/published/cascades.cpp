@@ -29,34 +29,44 @@ std::string period(const std::string& barrier, const std::string& well, const st
 // K.J. Franz, New Quantum Cascade Laser Architectures, PhD thesis, Princeton University (2009), ch. 3; Appl.
 // Phys. Lett. 90, 091104 (2007): electroluminescence at 80 K and 72 kV/cm, 125.6 meV (5 -> 4, diagonal) and
 // 152.9 meV (4 -> 2).
-// +-6 %: the field is known to +-3 kV/cm, the thickness to 4 % (511 against 489 Angstrom a period).
+// +-6 %: the field is known to +-3 kV/cm, the thickness to 4 % (511 against 489 Angstrom a period). At this
+// field level 4 meets a level of the extraction wells, 13 meV away; the measured lines are 16 and 19 meV wide
+// and hold both, so their centres are compared with centres of gravity of the emission strength.
 TEST_CASE("two lines of an InGaAs/AlInAs cascade") {
   const auto study = read("substrate: InP\ntemperature: 80 K\nfield: -72 kV/cm\n" +
                           period("Al0.48In0.52As", "In0.53Ga0.47As",
                                  {3.23, 9.77, 1.29, 8.60, 1.29, 3.52, 0.97, 3.52, 0.97, 1.95, 1.61, 2.74,
                                   1.61, 1.95, 1.94, 1.56, 2.26, 2.35},
-                                 {{1, "first"}}) +
-                          "model: {bands: two, levels: {above: -0.5 eV, below: 0.3 eV}}\n");
+                                 {{1, "first"}, {3, "second"}}) +
+                          "model: {bands: two, levels: {above: -0.15 eV, below: 0.3 eV}}\n");
   const auto levels = solve(study);
   CHECK(levels.certificate.certified);
-  // Levels 2 and 4 of the source are the first two that live in the first, widest well; 5 has the largest
-  // dipole to 4.
+  const auto dipole = dipoles(levels);
+  const auto& E = levels.energy;
+  // Levels 2 and 4 of the source are the first two of the first, widest well; 5 is the next of the first two
+  // wells.
   std::vector<int> in_first;
   for (int i = 0; i < levels.count(); ++i)
     if (probability(study, levels, i, "first") > 0.5) in_first.push_back(i);
   REQUIRE(in_first.size() >= 2);
   const int two = in_first[0], four = in_first[1];
-  std::vector<int> above;
-  for (int i = four + 1; i < levels.count(); ++i)
-    if (levels.energy[i] - levels.energy[four] > 0.08) above.push_back(i);
-  REQUIRE(!above.empty());
-  const auto dipole = dipoles(levels);
-  const int five = strongest(dipole, four, above);
-  const double E54 = 1000 * (levels.energy[five] - levels.energy[four]);
-  const double E42 = 1000 * (levels.energy[four] - levels.energy[two]);
+  int five = four + 1;
+  while (five < levels.count() &&
+         probability(study, levels, five, "first") + probability(study, levels, five, "second") < 0.5)
+    ++five;
+  REQUIRE(five < levels.count());
+  // Levels that share the character of level 4: those within one measured width.
+  double weight54 = 0, weight42 = 0, E54 = 0, E42 = 0;
+  for (int i = 0; i < levels.count(); ++i) {
+    if (i == two || i == five || std::abs(E[i] - E[four]) > 0.018) continue;
+    const double down = strength(E[five] - E[i], dipole(five, i)),
+                 on = strength(E[i] - E[two], dipole(i, two));
+    weight54 += down, E54 += 1000 * down * (E[five] - E[i]);
+    weight42 += on, E42 += 1000 * on * (E[i] - E[two]);
+  }
+  E54 /= weight54, E42 /= weight42;
   row("A01 cascade on InP, 5 -> 4", 125.6, E54, "meV");
   row("A01 cascade on InP, 4 -> 2", 152.9, E42, "meV");
-  row("A01 dipole 5 -> 4 (source's own calculation)", 3.1, std::abs(dipole(five, four)), "nm");
   CHECK(E54 == Approx(125.6).epsilon(0.06));
   CHECK(E42 == Approx(152.9).epsilon(0.06));
   CHECK(E42 - E54 == Approx(27.3).margin(6));

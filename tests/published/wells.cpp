@@ -111,7 +111,8 @@ TEST_CASE("the quantum-confined Stark shift") {
 
 // H. Luo et al., Appl. Phys. Lett. 86, 231103 (2005), from memory: peaks at 9.7, 5.4, 3.2 THz (+-0.1). The
 // wells are shallow and filled: without Hartree, exchange and depolarization the line must be 25 to 42 % too
-// low, as the self-consistent literature finds.
+// low. What is missing is known for the linear gap difference with a conduction share of 0.65, which is
+// therefore asked for here; the cubic gap of the default table is a third steeper at such compositions.
 TEST_CASE("shallow terahertz wells lie low without many-body terms") {
   struct Row {
     const char* barrier;
@@ -123,7 +124,8 @@ TEST_CASE("shallow terahertz wells lie low without many-body terms") {
                             ", thickness: " + std::to_string(r.around) +
                             " nm}\n  - {material: GaAs, thickness: " + std::to_string(r.well) +
                             " nm}\n  - {material: " + r.barrier + ", thickness: " + std::to_string(r.around) +
-                            " nm}\nmodel: {bands: two, levels: 12}\n");
+                            " nm}\nmaterials:\n  AlGaAs: {variant: linear 300 K}\n"
+                            "model: {bands: two, levels: 12, offset_ratio: 0.65}\n");
     const auto levels = solve(study);
     const auto dipole = dipoles(levels);
     double best = 0, peak = 0;
