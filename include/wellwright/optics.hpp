@@ -24,6 +24,10 @@ struct Transitions {
 };
 Transitions transitions(const Levels& levels);
 
+/// <f|[H, z]|i> over all components [eV nm], (final, initial): (E_f - E_i) z_fi between hard ends, and the
+/// form that holds between periodic ones.
+Eigen::MatrixXd velocity_moment(const Levels& levels);
+
 /// The pairs worth a line in a summary: those asked for, or all pairs of the lowest four. Counted from 1.
 std::vector<std::pair<int, int>> listed_transitions(const Study& study, int level_count);
 
@@ -35,5 +39,9 @@ struct Interband {
   Eigen::MatrixXd overlap;  ///< <psi_e|psi_h> of the envelopes
 };
 Interband interband(const Levels& electrons, const Levels& holes);
+
+/// A grid that refines both grids of one stack, with a degree whose quadrature is exact for products of their
+/// functions.
+Grid common_grid(const Grid& one, const Grid& other);
 
 }  // namespace wellwright
