@@ -15,8 +15,9 @@ namespace {
 constexpr int first_degree = 6, last_degree = 20, degree_step = 2;
 constexpr int most_halvings = 6;
 constexpr int most_rows = 4'000'000;
-constexpr double slow = 0.5;    // ratio of differences above which elements are halved instead
-constexpr double mostly = 0.5;  // probability with which a level lives in the layers asked for
+constexpr double slow = 0.5;       // ratio of differences above which elements are halved instead
+constexpr double far_above = 0.5;  // [eV] above every edge: levels there live everywhere
+constexpr double mostly = 0.5;     // probability with which a level lives in the layers asked for
 constexpr double eps = std::numeric_limits<double>::epsilon();
 
 /// Levels `first` .. `first + count - 1`, counted from the lowest above the floor, and the neighbours that
@@ -151,8 +152,10 @@ class Solver {
           ++found;
           last = i;
         }
-      if (found == wanted || range_.count >= largest_level_count) {
-        if (found == wanted) range_.count = last + 1;
+      const double highest = pairs_.energy[range_.lower() + range_.count - 1];
+      const bool far = highest > op_->profile.at.edge.maxCoeff() + far_above;
+      if (found == wanted || far || range_.count >= largest_level_count) {
+        range_.count = found == 0 ? 0 : last + 1;
         pairs_ = cold(range_);
         while (widened()) pairs_ = cold(range_);
         return;
@@ -321,10 +324,8 @@ class Solver {
       if (share > mostly) indices.push_back(i);
     }
     if (static_cast<int>(indices.size()) < wanted)
-      notes_.warn(
-          fmt::format("only {} of the {} levels asked for live mostly in the layers named, among the {} "
-                      "lowest that were looked at",
-                      indices.size(), wanted, levels.count()));
+      notes_.warn(fmt::format("only {} of the {} levels asked for live mostly in the layers named",
+                              indices.size(), wanted));
     return chosen(levels, indices);
   }
 

@@ -26,11 +26,11 @@ std::vector<Slab> slabs_of(const Study& study, Carrier carrier) {
   double hole_edge = 0;
   if (carrier != Carrier::electron) {
     hole_edge = -1e300;
-    for (std::size_t i = 0; i < stack.layers.size(); ++i)
-      for (const double t : {0.0, 1.0}) {
-        if (t > 0 && !stack.layers[i].grading) continue;
-        hole_edge = std::max(hole_edge, hole_edge_of(bands_in_layer(stack, static_cast<int>(i), t), carrier));
-      }
+    for (std::size_t i = 0; i < stack.layers.size(); ++i) {
+      hole_edge = std::max(hole_edge, hole_edge_of(stack.bands[i], carrier));
+      if (stack.layers[i].grading)
+        hole_edge = std::max(hole_edge, hole_edge_of(bands_in_layer(stack, static_cast<int>(i), 1), carrier));
+    }
   }
   const double slope = carrier == Carrier::electron ? study.field : -study.field;
   std::vector<Slab> slabs;

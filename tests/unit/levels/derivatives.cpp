@@ -34,10 +34,13 @@ TEST_CASE("Thickness and field derivatives are those of the solved levels") {
       if (carrier != Carrier::electron && bands != Bands::one) continue;
       Study study = hand_made::double_well(bands, 0.001);
       study.model.accuracy = 1e-11;
-      study.model.levels.count = 4;
+      // Hole levels 3 and 4 nearly cross, where a difference of this step no longer is a derivative.
+      study.model.levels.count = carrier == Carrier::electron ? 4 : 2;
       Notes notes;
       const Levels levels = solve_levels(study, carrier, notes, {});
-      const Sensitivity s = sensitivity(study, levels, {{1, 2}, {1, 3}});
+      const Sensitivity s = sensitivity(study, levels, {{1, 2}, {2, 1}});
+      CAPTURE(name_of(carrier), static_cast<int>(bands), levels.energy.transpose(),
+              levels.error_estimate.transpose());
       for (int layer = 0; layer < 5; ++layer) {
         const auto by_thickness = difference(study, carrier, 0.01, [&](Study& moved, double by) {
           moved.stack.layers[static_cast<std::size_t>(layer)].thickness += by;
@@ -48,7 +51,7 @@ TEST_CASE("Thickness and field derivatives are those of the solved levels") {
           difference(study, carrier, 1e-5, [](Study& moved, double by) { moved.field += by; });
       // 1e-11 eV over 1e-5 V/nm: the difference itself is good to about 1e-6.
       CHECK((s.field - by_field).cwiseAbs().maxCoeff() < 3e-6 * 67);
-      CHECK(s.transition_field[1] == Approx(s.field[2] - s.field[0]));
+      CHECK(s.transition_field[1] == Approx(s.field[0] - s.field[1]));
       CHECK(s.transition_thickness(0, 1) == Approx(s.thickness(1, 1) - s.thickness(0, 1)));
       CHECK(std::isnan(s.composition(0, 0)));  // media without composition
     }

@@ -144,7 +144,7 @@ TEST_CASE("The in-plane mass is the limit of the dispersion") {
 }
 
 TEST_CASE("Hole levels rise with the in-plane momentum by their own in-plane mass") {
-  const Levels levels = solve(hand_made::double_well(Bands::two), Carrier::heavy_hole);
+  const Levels levels = solve(hand_made::double_well(Bands::two, 0), Carrier::heavy_hole);
   CHECK(levels.companion.empty());
   CHECK(levels.energy[0] > 0);
   CHECK(levels.in_plane_mass[0] == Approx(0.11).epsilon(1e-10));
