@@ -1,0 +1,127 @@
+// SPDX-License-Identifier: Apache-2.0
+// Levels, transitions and beats as comma-separated tables with units in the header (RFC 4180).
+#include <fmt/format.h>
+
+#include <cmath>
+#include <cstdio>
+#include <filesystem>
+#include <fstream>
+
+#include "results/names.hpp"
+#include "wellwright/results.hpp"
+
+namespace wellwright {
+namespace {
+
+namespace fs = std::filesystem;
+
+constexpr const char* level_header =
+    "level,energy (eV),error estimate (eV),mean position (nm),spread (nm),lives in,probability "
+    "there,in-plane mass (m0),"
+    "conduction fraction,bound,group";
+constexpr const char* transition_header =
+    "initial,final,energy (eV),wavelength (nm),frequency (THz),dipole (nm),oscillator strength,beat period "
+    "(ps)";
+constexpr const char* beat_header =
+    "lower,upper,energy (eV),period (ps),frequency (THz),dipole amplitude (nm)";
+
+std::string number(double value) {
+  return std::isfinite(value) ? fmt::format("{:.12g}", value) : std::string();
+}
+
+std::string quoted(const std::string& text) {
+  if (text.find_first_of(",\"\r\n") == std::string::npos) return text;
+  std::string out = "\"";
+  for (const char c : text) {
+    if (c == '"') out += '"';
+    out += c;
+  }
+  return out + '"';
+}
+
+std::string levels_table(const Study& study, const Levels& levels) {
+  std::string out = std::string(level_header) + "\r\n";
+  for (int i = 0; i < levels.count(); ++i) {
+    Eigen::Index layer = 0;
+    const double most = levels.layer_probability.row(i).maxCoeff(&layer);
+    const std::string name =
+        study.stack.layers[static_cast<std::size_t>(layer)].label(static_cast<int>(layer) + 1);
+    const auto at = static_cast<std::size_t>(i);
+    out += fmt::format("{},{},{},{},{},{},{},{},{},{},{}\r\n", i + 1, number(levels.energy[i]),
+                       number(levels.error_estimate[i]), number(levels.mean_position[i]),
+                       number(levels.spread[i]), quoted(name), number(most), number(levels.in_plane_mass[i]),
+                       number(levels.conduction_fraction[i]), levels.bound[at], levels.group[at]);
+  }
+  return out;
+}
+
+std::string transitions_table(const Transitions& t) {
+  std::string out = std::string(transition_header) + "\r\n";
+  for (Eigen::Index i = 0; i < t.energy.rows(); ++i)
+    for (Eigen::Index f = i + 1; f < t.energy.cols(); ++f)
+      out += fmt::format("{},{},{},{},{},{},{},{}\r\n", i + 1, f + 1, number(t.energy(i, f)),
+                         number(t.wavelength(i, f)), number(t.frequency(i, f)), number(t.dipole(i, f)),
+                         number(t.oscillator_strength(i, f)), number(t.beat_period(i, f)));
+  return out;
+}
+
+std::string beats_table(const Dynamics& dynamics) {
+  std::string out = std::string(beat_header) + "\r\n";
+  for (const Beat& b : dynamics.beats)
+    out += fmt::format("{},{},{},{},{},{}\r\n", b.lower, b.upper, number(b.energy), number(b.period),
+                       number(b.frequency), number(b.dipole_amplitude));
+  return out;
+}
+
+// A table is replaced only when it begins with the header of that table.
+void check_table(const fs::path& path, std::string_view header) {
+  std::error_code none;
+  if (!fs::exists(path, none)) return;
+  std::string first;
+  std::ifstream file(path);
+  if (!fs::is_regular_file(path, none) || !std::getline(file, first) ||
+      std::string_view(first).substr(0, header.size()) != header)
+    throw FileTrouble(
+        fmt::format("{}: this file was not written by wellwright and is left as it is", path.string()));
+}
+
+void write_table(const fs::path& path, const std::string& text) {
+  const fs::path unfinished = path.string() + ".unfinished";
+  {
+    std::ofstream file(unfinished, std::ios::binary | std::ios::trunc);
+    file << text;
+    file.flush();
+    if (!file) {
+      std::error_code none;
+      fs::remove(unfinished, none);
+      throw FileTrouble(fmt::format("{}: cannot be written", path.string()));
+    }
+  }
+  std::error_code error;
+  fs::rename(unfinished, path, error);
+  if (error) throw FileTrouble(fmt::format("{}: cannot be put in place: {}", path.string(), error.message()));
+}
+
+}  // namespace
+
+void write_csv(const Answer& answer, const std::string& folder) {
+  std::error_code error;
+  if (fs::exists(folder, error) && !fs::is_directory(folder, error))
+    throw FileTrouble(fmt::format("{}: this is no folder", folder));
+  fs::create_directories(folder, error);
+  if (error) throw FileTrouble(fmt::format("{}: the folder cannot be made: {}", folder, error.message()));
+  std::vector<std::tuple<fs::path, std::string_view, std::string>> tables;
+  for (const CarrierAnswer& part : answer.carriers) {
+    const Carrier carrier = part.levels.profile.carrier;
+    tables.emplace_back(fs::path(folder) / (group_of("levels", carrier) + ".csv"), level_header,
+                        levels_table(answer.study, part.levels));
+    tables.emplace_back(fs::path(folder) / (group_of("transitions", carrier) + ".csv"), transition_header,
+                        transitions_table(part.transitions));
+  }
+  if (answer.dynamics)
+    tables.emplace_back(fs::path(folder) / "beats.csv", beat_header, beats_table(*answer.dynamics));
+  for (const auto& [path, header, text] : tables) check_table(path, header);
+  for (const auto& [path, header, text] : tables) write_table(path, text);
+}
+
+}  // namespace wellwright
