@@ -21,7 +21,7 @@ struct Trouble {
 /// An HDF5 identifier that closes itself.
 class Handle {
  public:
-  Handle(hid_t id, herr_t (*close)(hid_t), const char* doing);
+  Handle(hid_t id, herr_t (*closer)(hid_t), const char* doing);
   Handle(Handle&& other) noexcept;
   Handle(const Handle&) = delete;
   Handle& operator=(const Handle&) = delete;
