@@ -48,7 +48,7 @@ Handle space_of(const std::vector<hsize_t>& shape) {
 void write_attribute(hid_t object, const char* name, hid_t type, const Handle& space, const void* value) {
   const Handle attribute(H5Acreate2(object, name, type, space.id(), H5P_DEFAULT, H5P_DEFAULT), H5Aclose,
                          "writing an attribute");
-  check(H5Awrite(attribute.id(), type, value), "writing an attribute");
+  if (value) check(H5Awrite(attribute.id(), type, value), "writing an attribute");
 }
 
 void write_text(hid_t object, const char* name, const std::string& text) {
@@ -64,8 +64,8 @@ void describe(hid_t dataset, const Words& words) {
 
 }  // namespace
 
-Handle::Handle(hid_t id, herr_t (*close)(hid_t), const char* doing)
-    : id_(checked(id, doing)), close_(close) {}
+Handle::Handle(hid_t id, herr_t (*closer)(hid_t), const char* doing)
+    : id_(checked(id, doing)), close_(closer) {}
 Handle::Handle(Handle&& other) noexcept : id_(other.id_), close_(other.close_) {
   other.id_ = -1;
 }
@@ -93,7 +93,7 @@ void Group::attribute(const char* name, const std::vector<std::string>& texts) c
   for (const std::string& text : texts) values.push_back(text.c_str());
   const hsize_t length = values.size();
   const Handle space(H5Screate_simple(1, &length, nullptr), H5Sclose, "making a space");
-  write_attribute(handle_.id(), name, text_type().id(), space, values.data());
+  write_attribute(handle_.id(), name, text_type().id(), space, values.empty() ? nullptr : values.data());
 }
 
 void Group::attribute(const char* name, double value) const {
