@@ -76,6 +76,11 @@ using Progress = std::function<bool(double part, std::string_view what)>;
 /// The few of `candidates` nearest to `word` by edit distance, best first; empty when none is near.
 std::vector<std::string> nearest(std::string_view word, const std::vector<std::string>& candidates);
 
+/// "`a`", "`a` or `b`", "`a`, `b` or `c`"
+std::string listed(const std::vector<std::string>& words);
+/// "did you mean `a` or `b`?"; empty for no candidates.
+std::string did_you_mean(const std::vector<std::string>& candidates);
+
 /// The columns a terminal needs to show UTF-8 `text`.
 int displayed_width(std::string_view text);
 

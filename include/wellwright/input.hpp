@@ -56,6 +56,7 @@ class Node {
   static Node make_sequence(std::vector<Node> items, Place place);
   static Node make_map(std::vector<Entry> entries, Place place);
   static Node make_null(Place place);
+  Place& mutable_place() { return place_; }
   std::vector<Entry>& mutable_entries() { return entries_; }
   std::vector<Node>& mutable_items() { return items_; }
 

@@ -13,14 +13,6 @@
 namespace wellwright::cli {
 namespace {
 
-// "`a`", "`a` or `b`", "`a`, `b` or `c`"
-std::string listed(const std::vector<std::string>& words) {
-  std::string text;
-  for (std::size_t i = 0; i < words.size(); ++i)
-    text += (i == 0 ? "" : i + 1 == words.size() ? " or " : ", ") + ("`" + words[i] + "`");
-  return text;
-}
-
 [[noreturn]] void refuse(const std::string& command, const std::string& sentence, const std::string& hint) {
   std::string text = "wellwright" + (command.empty() ? "" : " " + command) + ": " + sentence + "\n";
   if (!hint.empty()) text += "  " + hint + "\n";
@@ -46,7 +38,7 @@ std::vector<std::string> spellings(const std::string& flags) {
   const auto near = nearest(word, names);
   refuse("", fmt::format("there is no command `{}`", word),
          near.empty() ? "the commands are " + listed(names) + "; wellwright --help says more"
-                      : "did you mean " + listed(near) + "?");
+                      : did_you_mean(near));
 }
 
 [[noreturn]] void refuse_option(const CommandWords& command, const std::string& word) {
@@ -67,7 +59,7 @@ std::vector<std::string> spellings(const std::string& flags) {
   const auto near = nearest(flag, known);
   refuse(command.name, fmt::format("there is no option `{}`", flag),
          near.empty() ? fmt::format("wellwright {} --help lists the options", command.name)
-                      : "did you mean " + listed(near) + "?");
+                      : did_you_mean(near));
 }
 
 // What stands behind each option of a command.
@@ -92,6 +84,20 @@ void bind(CLI::App& app, const OptionWords& words, Request& request) {
     if (name == flag) app.add_flag(joined, *target);
   if (name == "--set") app.add_option(joined, request.settings)->allow_extra_args(false);
   if (name == "--threads") app.add_option(joined, request.threads);
+}
+
+// An option other than --set that stands twice; the parser would only say that something does not match.
+std::string given_twice(const CommandWords& command, int argc, const char* const* argv) {
+  for (const auto& option : command.options) {
+    int times = 0;
+    const auto flags = spellings(option.flags);
+    for (int i = 2; i < argc && std::string_view(argv[i]) != "--"; ++i) {
+      const std::string_view word = std::string_view(argv[i]).substr(0, std::string_view(argv[i]).find('='));
+      if (std::find(flags.begin(), flags.end(), word) != flags.end()) ++times;
+    }
+    if (times > 1 && option.flags != "--set") return flags.back();
+  }
+  return "";
 }
 
 void check(const Request& request, const CommandWords& command, const std::vector<std::string>& operands) {
@@ -145,12 +151,14 @@ Request read_command_line(int argc, const char* const* argv) {
                    fmt::format("put the command first: wellwright {} ...", command.name));
     const auto near = nearest(first, {"--version", "--help"});
     refuse("", fmt::format("there is no option `{}`", first),
-           near.empty() ? "wellwright --help says how it is used" : "did you mean " + listed(near) + "?");
+           near.empty() ? "wellwright --help says how it is used" : did_you_mean(near));
   }
   const CommandWords* command = find_command(first);
   if (!command) refuse_command(first);
   request.command = first;
 
+  if (const std::string twice = given_twice(*command, argc, argv); !twice.empty())
+    refuse(request.command, fmt::format("`{}` is given twice", twice), "keep one of them");
   CLI::App app;
   app.set_help_flag();
   app.allow_extras();
@@ -170,10 +178,7 @@ Request read_command_line(int argc, const char* const* argv) {
             refuse(request.command, fmt::format("`{}` takes no value", spelling), "");
           if (trouble.get_name() == "ConversionError")
             refuse(request.command, fmt::format("`{}` wants a whole number", spelling), "");
-          if (trouble.get_name() == "ArgumentMismatch" && what.find("missing") == std::string::npos &&
-              what.find("required") == std::string::npos)
-            refuse(request.command, fmt::format("`{}` is given twice", spelling), "");
-          refuse(request.command, fmt::format("`{}` wants {} after it", spelling, option.argument),
+          refuse(request.command, fmt::format("`{}` wants {} behind it", spelling, option.argument),
                  fmt::format("{}: {}", spelling, option.sentence));
         }
     refuse(request.command, "the command line cannot be read", "wellwright " + request.command + " --help");

@@ -25,7 +25,11 @@ MaterialTable table_for(const Request& request) {
 }
 
 Study study_for(const Request& request, const MaterialTable& table, Notes& notes) {
-  return read_study(read_file(request.operand), request.operand, table, request.settings, notes);
+  const std::string text = read_file(request.operand);
+  if (text.starts_with("\x89HDF"))
+    throw FileTrouble(
+        fmt::format("{}: this is an HDF5 file, such as a result; a study is a text file", request.operand));
+  return read_study(text, request.operand, table, request.settings, notes);
 }
 
 void print_warnings(const Notes& notes, bool in_summary) {

@@ -52,7 +52,8 @@ std::string level_table(const Answer& answer, const CarrierAnswer& part, int wid
   const auto name = name_of(levels.profile.carrier);
   const bool hole = levels.profile.carrier != Carrier::electron;
   std::string text = fmt::format("Levels of the {}{}\n", name,
-                                 hole ? ", energies downward from the highest valence band edge" : "");
+                                 hole ? ", energies downward from the highest valence band edge"
+                                      : ", energies on the scale of the band edges");
   if (levels.count() == 0) return text + "  none in the window\n";
   Table table({{"level", "", Align::number},
                {"energy", "meV"},

@@ -100,10 +100,20 @@ int list_table(const Request& request, const MaterialTable& table) {
   return 0;
 }
 
-std::string sources_text(const std::vector<std::string>& sources, int width) {
-  std::string text = "Sources\n";
-  for (std::size_t i = 0; i < sources.size(); ++i)
-    text += wrapped(fmt::format("[{}] {}", i + 1, sources[i]), width, 2, 6);
+// The number of a text in a list that grows with every new one.
+std::size_t number_of(std::vector<std::string>& list, const std::string& text) {
+  const auto known = std::find(list.begin(), list.end(), text);
+  const auto index = static_cast<std::size_t>(known - list.begin());
+  if (known == list.end()) list.push_back(text);
+  return index + 1;
+}
+
+std::string numbered(const char* head, const std::vector<std::string>& list, const char* before,
+                     const char* after, int width) {
+  if (list.empty()) return "";
+  std::string text = fmt::format("\n{}\n", head);
+  for (std::size_t i = 0; i < list.size(); ++i)
+    text += wrapped(fmt::format("{}{}{} {}", before, i + 1, after, list[i]), width, 2, 6);
   return text;
 }
 
@@ -131,27 +141,31 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
     return 0;
   }
   const int width = output_width();
-  std::vector<std::string> sources;
-  Table rows({{"value", "", Align::left},
-              {"", "", Align::number},
+  std::vector<std::string> sources, remarks;
+  bool recalled = false;
+  Table rows({{"value", "", Align::left, 1},
+              {""},
               {"unit", "", Align::left},
               {"source", "", Align::left},
-              {"valid", "", Align::left, 2},
-              {"remark", "", Align::left, 1}});
+              {"remark", "", Align::left}});
   for (const auto& value : values) {
-    const auto known = std::find(sources.begin(), sources.end(), value.source);
-    const auto index = known - sources.begin();
-    if (known == sources.end()) sources.push_back(value.source);
-    std::string remark = value.trust.empty() ? "" : value.trust + " trust";
-    if (value.recalled) remark += std::string(remark.empty() ? "" : ", ") + "recalled, not read in print";
-    if (!value.note.empty()) remark += (remark.empty() ? "" : "; ") + value.note;
+    std::string remark;
+    const auto say = [&](const std::string& words) {
+      if (!words.empty()) remark += (remark.empty() ? "" : "; ") + words;
+    };
+    if (!value.trust.empty()) say(value.trust + " trust");
+    if (!value.range.empty()) say("valid: " + value.range);
+    say(value.note);
+    recalled = recalled || value.recalled;
     rows.add({value.key, significant(value.value, 6), value.unit == "1" ? "" : value.unit,
-              fmt::format("[{}]", index + 1), value.range, remark});
+              fmt::format("[{}]{}", number_of(sources, value.source), value.recalled ? " r" : ""),
+              remark.empty() ? "" : fmt::format("({})", number_of(remarks, remark))});
   }
   std::string text =
       fmt::format("{} at {:g} K, {}\n", alloy.text, environment.temperature,
                   environment.substrate ? "strained to " + environment.substrate->text : "unstrained");
   text += rows.text(width);
+  if (recalled) text += "  r: recalled from memory of the source, not read in print\n";
   if (environment.substrate) {
     const StrainState strain = table.strain(alloy, environment);
     text += fmt::format("\nStrain on {}: in plane {:.3f} %, along growth {:.3f} %\n",
@@ -162,7 +176,7 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
                           significant(strain.critical_thickness_buried, 3),
                           significant(strain.critical_thickness_superlattice, 3));
   }
-  text += "\n" + sources_text(sources, width);
+  text += numbered("Remarks", remarks, "(", ")", width) + numbered("Sources", sources, "[", "]", width);
   std::fputs(text.c_str(), stdout);
   std::fflush(stdout);
   print_warnings(notes, false);
@@ -194,7 +208,8 @@ int materials(const Request& request) {
   const MaterialTable table = table_for(request);
   if (request.operand.empty()) return list_table(request, table);
   if (!request.matched_to.empty()) return show_match(request, table);
-  return show_alloy(request, table, table.alloy(request.operand, place_of("wellwright materials", request.operand)));
+  return show_alloy(request, table,
+                    table.alloy(request.operand, place_of("wellwright materials", request.operand)));
 }
 
 }  // namespace wellwright::cli

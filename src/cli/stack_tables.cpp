@@ -83,7 +83,7 @@ std::string layer_table(const Study& study, int width, bool all) {
                {"shape", "", Align::left, 5},
                {"thickness", "nm"},
                {"", "ML", Align::number, 4},
-               {"from", "nm", Align::number, 3},
+               {"from z", "nm", Align::number, 3},
                {"band edge", "meV"},
                {"mass", "m0", Align::number, 1},
                {"gap", "eV", Align::number, 2},
@@ -139,7 +139,8 @@ std::string layer_table(const Study& study, int width, bool all) {
   if (hidden > 0)
     table.add_remark(fmt::format("... {} more; --verbose lists every layer",
                                  counted(static_cast<long long>(hidden), "layer")));
-  return "Layers, from the substrate up\n" + table.text(width);
+  return "Layers, from the substrate up\n" + table.text(width) +
+         (study.field != 0 ? "  band edge: of the conduction band, without the field\n" : "");
 }
 
 std::string value_table(const Study& study, int width) {

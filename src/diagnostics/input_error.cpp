@@ -51,7 +51,7 @@ std::string message(const std::string& sentence, const Place& place, const Place
                     const std::string& hint) {
   std::string text = heading(place) + sentence + quotation(place);
   if (other && (!other->file.empty() || !other->line_text.empty()))
-    text += fmt::format("\n{}the other is here{}", heading(*other), quotation(*other));
+    text += fmt::format("\n{}and here{}", heading(*other), quotation(*other));
   if (!hint.empty()) text += "\n  " + hint;
   return text;
 }

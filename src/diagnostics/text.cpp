@@ -124,4 +124,17 @@ std::vector<std::string> nearest(std::string_view word, const std::vector<std::s
   return out;
 }
 
+std::string listed(const std::vector<std::string>& words) {
+  std::string text;
+  for (std::size_t i = 0; i < words.size(); ++i) {
+    if (i > 0) text += i + 1 == words.size() ? " or " : ", ";
+    text += "`" + words[i] + "`";
+  }
+  return text;
+}
+
+std::string did_you_mean(const std::vector<std::string>& candidates) {
+  return candidates.empty() ? std::string{} : "did you mean " + listed(candidates) + "?";
+}
+
 }  // namespace wellwright

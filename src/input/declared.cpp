@@ -14,16 +14,6 @@ std::string_view parent_of(std::string_view path) {
   return dot == std::string_view::npos ? std::string_view{} : path.substr(0, dot);
 }
 
-// "`a`", "`a` or `b`", "`a`, `b` or `c`"
-std::string listed(const std::vector<std::string>& words) {
-  std::string text;
-  for (std::size_t i = 0; i < words.size(); ++i) {
-    if (i > 0) text += i + 1 == words.size() ? " or " : ", ";
-    text += "`" + words[i] + "`";
-  }
-  return text;
-}
-
 std::string in_words(std::string_view path) {
   if (path.empty()) return "at the top of the study";
   std::string text(path);
@@ -88,14 +78,19 @@ void Declarations::check(const Node& map, std::string_view path) const {
       std::string hint;
       const auto near = nearest(entry.key, known);
       if (!near.empty()) {
-        hint = fmt::format("did you mean {}?", listed(near));
+        hint = did_you_mean(near);
       } else {
         for (const auto& key : keys_)
           if (last_part(key.path) == entry.key) {
             hint = fmt::format("`{}` stands {}", entry.key, in_words(parent_of(key.path)));
             break;
           }
-        if (hint.empty()) hint = fmt::format("known {}: {}", in_words(path), listed(known));
+        if (hint.empty()) {
+          std::vector<std::string> built;  // what a later step brings would only be refused next
+          for (const auto& key : known)
+            if (at(full.substr(0, stem) + key).step <= 1) built.push_back(key);
+          hint = fmt::format("known {}: {}", in_words(path), listed(built));
+        }
       }
       throw InputError(fmt::format("unknown key `{}` {}", entry.key, in_words(path)), entry.key_place, hint);
     }

@@ -80,6 +80,22 @@ Place Lines::place(int number, std::size_t byte, int length) const {
   return place;
 }
 
+bool Lines::closes_quote(int number, std::size_t byte) const {
+  const auto at = static_cast<std::size_t>(std::clamp(number, 0, static_cast<int>(starts_.size()) - 1));
+  const std::size_t open = text_.find_first_of("\"'", starts_[at] + byte);
+  if (open == std::string::npos) return true;  // no quoted text after all
+  const char quote = text_[open];
+  for (std::size_t i = open + 1; i < text_.size(); ++i) {
+    if (quote == '"' && text_[i] == '\\') {
+      ++i;
+    } else if (text_[i] == quote) {
+      if (quote == '"' || i + 1 == text_.size() || text_[i + 1] != '\'') return true;
+      ++i;  // two single quotes stand for one
+    }
+  }
+  return false;
+}
+
 void Lines::check() const {
   for (std::size_t number = 0; number < starts_.size(); ++number) {
     const int row = static_cast<int>(number);

@@ -18,6 +18,8 @@ class Lines {
   const std::string& text() const { return text_; }
   /// The place at a 0-based line and a byte of that line.
   Place place(int line, std::size_t byte, int length = 1) const;
+  /// Whether the quoted text that begins at this byte ends somewhere (the parser accepts one that does not).
+  bool closes_quote(int line, std::size_t byte) const;
 
  private:
   void check() const;

@@ -19,13 +19,6 @@ std::string shown(std::string_view text) {
   return fmt::format("`{}...`", text.substr(0, end));
 }
 
-std::string listed(const std::vector<std::string>& words) {
-  std::string text;
-  for (std::size_t i = 0; i < words.size(); ++i)
-    text += (i == 0 ? "" : i + 1 == words.size() ? " or " : ", ") + words[i];
-  return text;
-}
-
 const char* words_of(Node::Kind kind) {
   switch (kind) {
     case Node::Kind::absent:
@@ -109,7 +102,7 @@ std::string Node::word(std::string_view name, const std::vector<std::string>& al
   if (std::find(allowed.begin(), allowed.end(), text) != allowed.end()) return text;
   const auto near = nearest(text, allowed);
   throw InputError(fmt::format("`{}` cannot be {}", name, shown(text)), place_,
-                   near.empty() ? choice : fmt::format("did you mean {}?", listed(near)));
+                   near.empty() ? choice : did_you_mean(near));
 }
 
 std::string Node::string(std::string_view name) const {
@@ -136,8 +129,7 @@ void Node::only_keys(const std::vector<std::string>& allowed, std::string_view w
     if (std::find(allowed.begin(), allowed.end(), entry.key) != allowed.end()) continue;
     const auto near = nearest(entry.key, allowed);
     throw InputError(fmt::format("unknown key {} {}", shown(entry.key), where), entry.key_place,
-                     near.empty() ? fmt::format("known keys: {}", listed(allowed))
-                                  : fmt::format("did you mean {}?", listed(near)));
+                     near.empty() ? fmt::format("known keys: {}", listed(allowed)) : did_you_mean(near));
   }
 }
 

@@ -4,6 +4,7 @@
 
 #include <algorithm>
 
+#include "input/lines.hpp"
 #include "wellwright/input.hpp"
 
 namespace wellwright {
@@ -91,7 +92,7 @@ Node& find_layer(Node& study, const std::string& address, const Place& place) {
   const auto near = nearest(address, names);
   throw InputError(
       fmt::format("there is no layer named `{}`", address), place,
-      !near.empty() ? fmt::format("did you mean `{}`?", fmt::join(near, "` or `"))
+      !near.empty() ? did_you_mean(near)
       : names.empty()
           ? fmt::format("no layer has a name; use a number from 1 to {:.0f}", number - 1)
           : fmt::format("named layers: `{}`; or use a number from 1 to {:.0f}",
@@ -100,12 +101,36 @@ Node& find_layer(Node& study, const std::string& address, const Place& place) {
                         number - 1));
 }
 
+// The value with places that show the whole setting, as the user wrote it.
+void show_setting(Node& node, const std::string& line_text) {
+  node.mutable_place().line_text = line_text;
+  for (Node& item : node.mutable_items()) show_setting(item, line_text);
+  for (Node::Entry& entry : node.mutable_entries()) {
+    entry.key_place.line_text = line_text;
+    show_setting(entry.value, line_text);
+  }
+}
+
+Node value_of(const std::string& path, const std::string& text, const Place& setting) {
+  // Blanks stand for the path, so that columns count from its beginning.
+  const std::string blanks(static_cast<std::size_t>(characters(path)) + 1, ' ');
+  try {
+    Node value = read_yaml(blanks + text, setting.file);
+    show_setting(value, setting.line_text);
+    return value;
+  } catch (const InputError& mistake) {
+    Place place = mistake.place();
+    place.line_text = setting.line_text;
+    throw InputError(mistake.sentence(), place, mistake.hint());
+  }
+}
+
 }  // namespace
 
 void set_value(Node& study, const std::string& path, const std::string& text) {
   const Place place = place_of_setting(path, text);
   const auto parts = parts_of(path, place);
-  Node value = read_yaml(text, "--set");
+  Node value = value_of(path, text, place);
   if (value.kind() == Node::Kind::null)
     throw InputError(fmt::format("`{}` is set to nothing", path), place, "write a value after the =");
   if (!study.is_map()) throw InputError("the study is not a map of keys", place);

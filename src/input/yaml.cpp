@@ -24,7 +24,9 @@ class Builder : public YAML::EventHandler {
   void OnDocumentStart(const YAML::Mark&) override {}
   void OnDocumentEnd() override {}
   void OnNull(const YAML::Mark& mark, YAML::anchor_t anchor) override {
-    add(Node::make_null(place(mark)), mark, anchor);
+    // The parser puts nothing where the next thing begins: a value that is missing belongs to its key.
+    const bool of_key = !frames_.empty() && frames_.back().key_waits;
+    add(Node::make_null(of_key ? frames_.back().key_place : place(mark)), mark, anchor);
   }
   void OnAlias(const YAML::Mark& mark, YAML::anchor_t anchor) override {
     const auto found = anchors_.find(anchor);
@@ -39,6 +41,9 @@ class Builder : public YAML::EventHandler {
                 const std::string& value) override {
     if (tag != "?" && tag != "!" && !tag.empty())
       throw InputError("tags are not used here", place(mark), "take the word with the ! out");
+    if (tag == "!" && !lines_.closes_quote(mark.line, static_cast<std::size_t>(std::max(mark.column, 0))))
+      throw InputError("this quotation mark is not closed", place(mark),
+                       "close the text with the mark it began with");
     add(Node::make_scalar(value, place(mark, characters(value)), tag == "!"), mark, anchor);
   }
   void OnSequenceStart(const YAML::Mark& mark, const std::string& tag, YAML::anchor_t anchor,
@@ -100,7 +105,8 @@ class Builder : public YAML::EventHandler {
   // A list or a map cannot be a key.
   void refuse_as_key(const YAML::Mark& mark) const {
     if (!frames_.empty() && frames_.back().map && !frames_.back().key_waits)
-      throw InputError("a list or a map stands where a key belongs", place(mark), "a key is one word");
+      throw InputError("a list or a map stands where a key belongs", place(mark),
+                       "a key is one word; a { or [ above may not be closed");
   }
 
   void close() {
@@ -172,7 +178,7 @@ constexpr Translation translations[] = {
     {"end of sequence not found", "this line does not belong to the list above it",
      "check the indentation: the dashes of one list stand in one column"},
     {"illegal map value", "a colon stands where no key can be",
-     "put a text that contains a colon in quotes, and a blank after the colon of a key"},
+     "the key above may lack its colon or the blank after it; a text that contains a colon stands in quotes"},
     {"illegal block entry", "a dash stands where no list can be", "put the list on a line of its own"},
     {"illegal map key", "a ? stands where no key can be", "take it out"},
     {"illegal flow end", "a bracket closes that was not opened", "take it out"},

@@ -77,7 +77,9 @@ Alloy from_parts(std::string_view text, const std::vector<Part>& parts, const Pl
   for (const Part& part : parts) {
     const int s = sublattice_of(part.element);
     double& fraction = alloy.fraction[static_cast<std::size_t>(part.element)];
-    if (fraction != 0)
+    const auto same = std::count_if(parts.begin(), parts.end(),
+                                    [&](const Part& other) { return other.element == part.element; });
+    if (same > 1)
       throw InputError(
           fmt::format("{} names {} twice", text, element_names[static_cast<std::size_t>(part.element)]),
           place);
@@ -135,10 +137,10 @@ Alloy MaterialTable::alloy(std::string_view text, const Place& place) const {
   const auto parts = parts_of(text);
   if (parts.empty()) {
     const auto near = nearest(text, names());
-    throw InputError(fmt::format("`{}` is no material that is known", text), place,
+    throw InputError(fmt::format("`{}` is no material of the table", text), place,
                      near.empty()
                          ? "write an alloy such as Al0.3Ga0.7As, or define the medium under materials:"
-                         : fmt::format("did you mean {}?", fmt::join(near, " or ")));
+                         : did_you_mean(near));
   }
   Alloy alloy = from_parts(text, parts, place);
   std::optional<Structure> structure;

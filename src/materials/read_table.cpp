@@ -104,7 +104,7 @@ class Reader {
         for (const ParameterInfo& info : parameter_table) keys.emplace_back(info.key);
         const auto near = nearest(entry.key, keys);
         throw InputError(fmt::format("`{}` is no quantity of a material", entry.key), entry.key_place,
-                         near.empty() ? "" : fmt::format("did you mean {}?", fmt::join(near, " or ")));
+                         did_you_mean(near));
       }
       const ParameterInfo& info = parameter_table[static_cast<std::size_t>(parameter)];
       const Node& node = map_of(entry.value, entry.key);

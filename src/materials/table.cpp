@@ -176,7 +176,7 @@ MaterialTable MaterialTable::with_overrides(const Node& block, Notes& notes) con
                          entry.key_place,
                          near.empty()
                              ? "add conduction_band_edge: with a unit, counted from the zero of energy"
-                             : fmt::format("did you mean {}?", fmt::join(near, " or ")));
+                             : did_you_mean(near));
       }
       made.is_medium = true;
       data->overrides.push_back(made);

@@ -68,7 +68,7 @@ std::vector<int> find_layers(const Stack& stack, std::string_view address, const
   std::string hint;
   const auto near = nearest(name, names);
   if (!near.empty())
-    hint = fmt::format("did you mean `{}`?", fmt::join(near, "` or `"));
+    hint = did_you_mean(near);
   else if (names.empty())
     hint = fmt::format("no layer has a name; use a number from 1 to {}", count);
   else

@@ -39,8 +39,7 @@ Address parse(const Study& study, std::string_view text, const Place& place) {
   if (!text.starts_with("layers.")) {
     const auto near = nearest(text, plain);
     throw InputError(fmt::format("`{}` is no address of a value", text), place,
-                     near.empty() ? "write field, or layers.2.thickness"
-                                  : fmt::format("did you mean `{}`?", fmt::join(near, "` or `")));
+                     near.empty() ? "write field, or layers.2.thickness" : did_you_mean(near));
   }
   const std::string_view rest = text.substr(7);
   const auto dot = rest.find('.');

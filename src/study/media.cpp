@@ -58,7 +58,7 @@ void check_media(const Node& root, const Study& study) {
           const Node& carrier = root["model"]["carrier"];
           throw InputError(
               fmt::format("electrons in {} are not at Gamma, and their levels are not built", alloy->text),
-              layer.place, carrier.present() ? carrier.place() : layer.place,
+              layer.place, carrier.present() ? carrier.place() : Place{},
               "holes in Si, Ge and SiGe are fine: model: {carrier: heavy hole}");
         }
         continue;

@@ -147,7 +147,7 @@ Model read_model(const Node& root, const Stack& stack) {
   model.bloch_phases = keys.whole_number(node, "model.bloch_phases", 2, largest_phase_count);
   if (node["bloch_phases"].present() && model.ends == Ends::hard)
     throw InputError("`bloch_phases` stands without periodic ends", node.key_place("bloch_phases"),
-                     node["ends"].present() ? node["ends"].place() : node.place(),
+                     node["ends"].present() ? node["ends"].place() : Place{},
                      "write ends: periodic beside it");
   model.accuracy = keys.quantity(node, "model.accuracy");
   if (!(model.accuracy > 0))

@@ -85,7 +85,10 @@ std::string wanted(const std::vector<Dimension>& allowed) {
 std::string examples(const std::vector<Dimension>& allowed) {
   std::string text;
   for (std::size_t i = 0; i < allowed.size(); ++i)
-    text += (i == 0 ? "" : " or ") + std::string(words_of(allowed[i]).example);
+    text += (i == 0                    ? ""
+             : i + 1 == allowed.size() ? " or "
+                                       : ", ") +
+            std::string(words_of(allowed[i]).example);
   return text;
 }
 
@@ -218,11 +221,19 @@ bool read_quantity(std::string_view whole, const std::vector<Dimension>& allowed
     trouble.what = octal       ? fmt::format("`{}` begins with a zero", text)
                    : too_large ? fmt::format("`{}` is too large or too small for a number", text)
                                : fmt::format("`{}` is not {}", text, wanted(allowed));
-    trouble.hint = octal ? "write the number without the leading zero"
-                         : fmt::format("write {}, such as {}", wanted(allowed), examples(allowed));
+    trouble.hint = octal       ? "write the number without the leading zero"
+                   : too_large ? ""
+                               : fmt::format("write {}, such as {}", wanted(allowed), examples(allowed));
     return false;
   }
   const std::string_view unit = trimmed(text.substr(length));
+  if (unit.size() > 1 && unit[0] == ',' && unit[1] >= '0' && unit[1] <= '9') {
+    std::string pointed(text);
+    pointed[offset_of(unit) - offset_of(text)] = '.';
+    trouble = {fmt::format("`{}` has a comma in its number", text),
+               fmt::format("decimals stand after a point: {}", pointed), offset_of(text)};
+    return false;
+  }
   const bool plain = is_one_of(Dimension::number, allowed) || is_one_of(Dimension::mass, allowed);
   if (unit.empty()) {
     if (plain) {
@@ -250,12 +261,12 @@ bool read_quantity(std::string_view whole, const std::vector<Dimension>& allowed
   trouble.hint = fmt::format("write {}, such as {}", wanted(allowed), examples(allowed));
   if (normalised == "A" && is_one_of(Dimension::length, allowed)) {
     trouble.what = "`A` is the ampere";
-    trouble.hint = "did you mean angstrom? write Å or angstrom";
+    trouble.hint = "write Å or angstrom for the length";
     return false;
   }
   if (const std::string near = other_case(normalised, allowed); !near.empty()) {
     trouble.what = fmt::format("`{}` is not {}", unit, wanted(allowed));
-    trouble.hint = fmt::format("did you mean {}?", near);
+    trouble.hint = fmt::format("did you mean `{}`?", near);
     return false;
   }
   const std::string kind = measured_by(normalised);
@@ -263,6 +274,8 @@ bool read_quantity(std::string_view whole, const std::vector<Dimension>& allowed
     trouble.what = fmt::format("`{}` carries a unit, but {} is wanted", text, wanted(allowed));
   else if (!kind.empty())
     trouble.what = fmt::format("`{}` is {}, not {}", text, kind, wanted(allowed));
+  else if (is_udunits_unit(normalised))
+    trouble.what = fmt::format("`{}` is not {}", text, wanted(allowed));
   else
     trouble.what = fmt::format("`{}` is no unit that is known", unit);
   return false;

@@ -28,5 +28,7 @@ std::string normalise(std::string_view unit);
 /// The unit through UDUNITS-2, for what the table lacks: the factor and offset to the internal unit of
 /// `dimension`. False when the word is no unit or has another dimension; reciprocals count as another.
 bool udunits_conversion(const std::string& normalised, Dimension dimension, double& factor, double& offset);
+/// Whether UDUNITS-2 knows the word as a unit of anything.
+bool is_udunits_unit(const std::string& normalised);
 
 }  // namespace wellwright

@@ -82,13 +82,23 @@ ut_system* units_system() {
   return system;
 }
 
+std::mutex one_at_a_time;  // the library keeps state of its own
+
 }  // namespace
+
+bool is_udunits_unit(const std::string& normalised) {
+  if (!is_unit_word(normalised)) return false;
+  const std::lock_guard lock(one_at_a_time);
+  ut_system* system = units_system();
+  ut_unit* unit = system ? ut_parse(system, normalised.c_str(), UT_UTF8) : nullptr;
+  if (unit) ut_free(unit);
+  return unit != nullptr;
+}
 
 bool udunits_conversion(const std::string& normalised, Dimension dimension, double& factor, double& offset) {
   double to_internal = 1;
   const char* internal = reference(dimension, to_internal);
   if (!internal || !is_unit_word(normalised)) return false;
-  static std::mutex one_at_a_time;
   const std::lock_guard lock(one_at_a_time);
   ut_system* system = units_system();
   if (!system) return false;
