@@ -218,8 +218,8 @@ Handle create(const std::string& path, bool in_memory) {
   check(H5Eset_auto2(H5E_DEFAULT, nullptr, nullptr), "silencing HDF5");
   const Handle access(H5Pcreate(H5P_FILE_ACCESS), H5Pclose, "making properties");
   constexpr std::size_t growth = 1 << 20;
-  if (in_memory) check(H5Pset_fapl_core(access.id(), growth, false), "making properties");
-  check(H5Pset_libver_bounds(access.id(), H5F_LIBVER_V18, H5F_LIBVER_LATEST), "making properties");
+  if (in_memory) check(H5Pset_fapl_core(access.id(), growth, true), "making properties");
+  check(H5Pset_libver_bounds(access.id(), H5F_LIBVER_V18, H5F_LIBVER_V18), "making properties");
   const Handle plist = ordered(H5P_FILE_CREATE);
   return {H5Fcreate(path.c_str(), H5F_ACC_TRUNC, plist.id(), access.id()), H5Fclose, "creating the file"};
 }
@@ -230,15 +230,6 @@ File::File(const std::string& path, bool in_memory) : handle_(create(path, in_me
 
 Group File::root() const {
   return Group({H5Gopen2(handle_.id(), "/", H5P_DEFAULT), H5Gclose, "opening the root"});
-}
-
-std::vector<char> File::image() const {
-  check(H5Fflush(handle_.id(), H5F_SCOPE_GLOBAL), "writing the file");
-  const auto size = H5Fget_file_image(handle_.id(), nullptr, 0);
-  if (size < 0) throw Trouble{"writing the file"};
-  std::vector<char> bytes(static_cast<std::size_t>(size));
-  if (H5Fget_file_image(handle_.id(), bytes.data(), bytes.size()) < 0) throw Trouble{"writing the file"};
-  return bytes;
 }
 
 void File::close() {

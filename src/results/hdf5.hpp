@@ -89,13 +89,12 @@ class Group {
   std::map<std::string, Handle> open_;
 };
 
-/// A file being written: in memory when `in_memory`, else at `path`.
+/// A file being written to `path`: gathered in memory and written by close() when `in_memory`, else as it
+/// grows.
 class File {
  public:
   File(const std::string& path, bool in_memory);
   Group root() const;
-  /// The whole file as bytes (in memory only).
-  std::vector<char> image() const;
   void close();
 
  private:

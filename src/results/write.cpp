@@ -18,7 +18,7 @@ namespace wellwright {
 namespace {
 
 namespace fs = std::filesystem;
-constexpr double largest_in_memory = 64e6;  // bytes; larger files are streamed to disk
+constexpr double largest_in_memory = 64e6;  // bytes; larger files go to disk as they grow
 
 std::string why() {
   return std::strerror(errno);
@@ -75,23 +75,6 @@ class Unfinished {
   std::string target_, name_;
   bool done_ = false;
 };
-
-void write_bytes(const std::string& name, const std::vector<char>& bytes, const std::string& target) {
-  const int file = ::open(name.c_str(), O_WRONLY | O_TRUNC);
-  if (file < 0) throw FileTrouble(fmt::format("{}: cannot be written: {}", target, why()));
-  std::size_t done = 0;
-  while (done < bytes.size()) {
-    const ssize_t part = ::write(file, bytes.data() + done, bytes.size() - done);
-    if (part < 0 && errno == EINTR) continue;
-    if (part <= 0) {
-      const std::string trouble = why();
-      ::close(file);
-      throw FileTrouble(fmt::format("{}: cannot be written: {}", target, trouble));
-    }
-    done += static_cast<std::size_t>(part);
-  }
-  if (::close(file) != 0) throw FileTrouble(fmt::format("{}: cannot be written: {}", target, why()));
-}
 
 std::string materials_of(const Study& study) {
   if (!study.stack.table) return {};
@@ -168,16 +151,9 @@ void write_result(const Answer& answer, const std::string& path) {
   check_target(path);
   Unfinished unfinished(path);
   try {
-    if (bytes_of(answer) < largest_in_memory) {
-      hdf5::File file(unfinished.name(), true);
-      write_all(file, answer);
-      write_bytes(unfinished.name(), file.image(), path);
-      file.close();
-    } else {
-      hdf5::File file(unfinished.name(), false);
-      write_all(file, answer);
-      file.close();
-    }
+    hdf5::File file(unfinished.name(), bytes_of(answer) < largest_in_memory);
+    write_all(file, answer);
+    file.close();
   } catch (const hdf5::Trouble& trouble) {
     throw FileTrouble(fmt::format("{}: cannot be written: {} failed{}", path, trouble.doing,
                                   errno != 0 ? " (" + why() + ")" : ""));
