@@ -11,8 +11,9 @@ namespace {
 constexpr int lanes = 4;
 
 // Without pivoting: a pivot vanishes only where E is a level of the stack cut off at that node. Then it is
-// replaced by a number of rounding size, as LAPACK's Sturm counts do (LAPACK Working Note 172), and the
-// levels themselves are taken from T(E) applied, never from its factors.
+// replaced by a tiny number, as LAPACK's Sturm counts do (LAPACK Working Note 172), and the levels themselves
+// are taken from T(E) applied, never from its factors. The number stays far below rounding: at a level the
+// last pivot is rounding of its own element, which may be much wider than the one that makes the norm.
 double away_from_zero(double pivot, double tiny) {
   if (std::abs(pivot) >= tiny) return pivot;
   return pivot < 0 ? -tiny : tiny;
@@ -26,7 +27,7 @@ Factors::Factors(const Hamiltonian& hamiltonian)
       elements_(hamiltonian.profile().grid.elements()),
       packs_((elements_ + lanes - 1) / lanes),
       periodic_(hamiltonian.profile().ends == Ends::periodic),
-      tiny_(1e-18 * hamiltonian.norm()) {
+      tiny_(1e-60 * hamiltonian.norm()) {
   const ReferenceElement& reference = reference_element(p_);
   const int n = p_ + 1;
   for (int i = 1; i < p_; ++i) order_.push_back(i);
