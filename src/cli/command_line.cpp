@@ -79,7 +79,10 @@ void bind(CLI::App& app, const OptionWords& words, Request& request) {
                                                     {"--verbose", &request.verbose},
                                                     {"--help", &request.help}};
   for (const auto& [flag, target] : texts)
-    if (name == flag) app.add_option(joined, *target);
+    if (name == flag)
+      app.add_option(joined, *target)->check([](const std::string& value) {
+        return value.empty() ? std::string("missing") : std::string();
+      });
   for (const auto& [flag, target] : switches)
     if (name == flag) app.add_flag(joined, *target);
   if (name == "--set") app.add_option(joined, request.settings)->allow_extra_args(false);
