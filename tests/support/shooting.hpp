@@ -134,9 +134,29 @@ class Shooter {
     Real low = floor, step = 0.05L;
     while (count(low + step) <= n) low += step, step *= 2;
     Real high = low + step;
-    while (high - low > 1e-17L * (1 + std::abs(high))) {
+    const auto fine = [&] { return high - low < 1e-17L * (1 + std::abs(high)); };
+    for (int below = count(low), above = count(high); !fine() && (below != n || above != n + 1);) {
       const Real middle = low + (high - low) / 2;
-      (count(middle) > n ? high : low) = middle;
+      const int here = count(middle);
+      (here > n ? high : low) = middle;
+      (here > n ? above : below) = here;
+    }
+    // Alone in its bracket: Ridders' steps on psi at the top wall, which changes sign at the level.
+    Real at_low = shoot(low, {0, 1}).psi, at_high = shoot(high, {0, 1}).psi, last = plain::infinite;
+    for (int i = 0; i < 60 && !fine(); ++i) {
+      const Real middle = low + (high - low) / 2, at_middle = shoot(middle, {0, 1}).psi;
+      const Real root = std::sqrt(at_middle * at_middle - at_low * at_high);
+      const Real next = middle + (middle - low) * ((at_low > at_high ? 1 : -1) * at_middle / root);
+      if (!(std::abs(next - last) > 1e-18L)) return next;
+      last = next;
+      const Real at_next = shoot(next, {0, 1}).psi;
+      for (const auto& [E, f] : {std::pair{middle, at_middle}, {next, at_next}})
+        if (E > low && E < high) {
+          if ((f < 0) == (at_low < 0))
+            low = E, at_low = f;
+          else
+            high = E, at_high = f;
+        }
     }
     return low + (high - low) / 2;
   }

@@ -172,10 +172,10 @@ TEST_CASE("derivatives of graded and smeared stacks against differences of level
       for (int layer = 0; layer < static_cast<int>(study.stack.layers.size()); ++layer)
         check(found.thickness, layer, "layers." + std::to_string(layer + 1) + ".thickness", 0.04);
       if (i == 1) {
-        check(found.composition, 2, "layers.3.composition", 4e-3);
-        check(found.composition, 3, "layers.4.composition", 4e-3);
+        check(found.composition, 2, "layers.3.composition", 1e-3);
+        check(found.composition, 3, "layers.4.composition", 1e-3);
       } else {
-        check(found.composition, 0, "layers.1.composition", 4e-3);
+        check(found.composition, 0, "layers.1.composition", 1e-3);
       }
     }
 }
