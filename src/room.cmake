@@ -41,6 +41,11 @@ if(WELLWRIGHT_SANITIZE)
                                                     -fno-omit-frame-pointer)
   target_link_options(wellwright_flags INTERFACE -fsanitize=address,undefined)
 endif()
+if(WELLWRIGHT_FUZZ)  # every room counts its branches for the fuzzer; only its own program links the engine
+  target_compile_options(wellwright_flags INTERFACE -fsanitize=fuzzer-no-link,address,undefined
+                                                    -fno-sanitize-recover=all)
+  target_link_options(wellwright_flags INTERFACE -fsanitize=address,undefined)
+endif()
 
 set_property(GLOBAL PROPERTY WELLWRIGHT_ROOMS "")
 
@@ -61,10 +66,6 @@ function(room NAME)
 
   file(GLOB sources CONFIGURE_DEPENDS ${CMAKE_CURRENT_SOURCE_DIR}/${NAME}/*.cpp)
   list(FILTER sources EXCLUDE REGEX "/main\\.cpp$")
-  if(NOT sources)  # a room whose walls stand but that holds nothing so far
-    set(sources ${CMAKE_CURRENT_BINARY_DIR}/empty_${NAME}.cpp)
-    file(CONFIGURE OUTPUT ${sources} CONTENT "// nothing here\n")
-  endif()
   add_library(wellwright_${NAME} STATIC ${sources} ${WELLWRIGHT_GENERATED_${NAME}})
   add_library(wellwright::${NAME} ALIAS wellwright_${NAME})
   set_target_properties(wellwright_${NAME} PROPERTIES EXPORT_NAME ${NAME} LINKER_LANGUAGE CXX)

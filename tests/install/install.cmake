@@ -48,8 +48,8 @@ if(beyond)
 endif()
 
 # The command needs no file beside it: it runs from the moved folder with an empty environment.
-step("installed command" ${CMAKE_COMMAND} -E env -i ${WORK}/moved/bin/wellwright --version)
+step("installed command" env -i ${WORK}/moved/bin/wellwright --version)
 if(NOT output STREQUAL "wellwright ${VERSION}\n")
   message(FATAL_ERROR "wellwright --version says: ${output}")
 endif()
-step("installed table" ${CMAKE_COMMAND} -E env -i ${WORK}/moved/bin/wellwright materials GaAs)
+step("installed table" env -i ${WORK}/moved/bin/wellwright materials GaAs)

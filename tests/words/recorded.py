@@ -46,7 +46,7 @@ def sections(text):
 class Case:
     def __init__(self, path):
         self.path = path
-        self.about, parts = sections(path.read_text().rstrip("\n"))
+        self.about, parts = sections(path.read_text().removesuffix("\n"))
         self.files, self.exit, self.errors, self.output, self.command = {}, None, "", "", None
         for head, body in parts:
             word, _, rest = head.partition(" ")
