@@ -16,6 +16,7 @@ constexpr int first_degree = 6, last_degree = 20, degree_step = 2;
 constexpr int most_halvings = 6;
 constexpr int most_rows = 4'000'000;
 constexpr double slow = 0.5;       // ratio of differences above which elements are halved instead
+constexpr double small = 0.5;      // of the accuracy, below which an algebraic tail is accepted
 constexpr double far_above = 0.5;  // [eV] above every edge: levels there live everywhere
 constexpr double mostly = 0.5;     // probability with which a level lives in the layers asked for
 constexpr double eps = std::numeric_limits<double>::epsilon();
@@ -210,21 +211,23 @@ class Solver {
 
   double noise_of() const { return 8 * eps * op_->hamiltonian.rounding_norm(); }
 
-  // 2 |dE| / (1 - r) + 8 eps ||A||: the differences of successive degrees fall at least like r^n. Infinite
-  // where r > 0.5.
+  // 2 |dE| / (1 - r) + 8 eps ||A||: the differences of successive degrees fall at least like r^n. Where r >
+  // 0.5 they fall like a power of the degree p (a grading that is not analytic at its face): what is left is
+  // below p |dE| for every power above one half, and is taken twice that once it is small; infinite before.
   Eigen::VectorXd estimate_of(const std::vector<Eigen::VectorXd>& history) const {
     const std::size_t n = history.size();
     const Eigen::VectorXd last = (history[n - 1] - history[n - 2]).cwiseAbs();
     const Eigen::VectorXd before = (history[n - 2] - history[n - 3]).cwiseAbs();
-    const double noise = noise_of();
+    const double noise = noise_of(), degree = op_->profile.grid.degree;
     Eigen::VectorXd estimate(last.size());
     for (Eigen::Index i = 0; i < last.size(); ++i) {
-      if (last[i] <= noise) {
+      const double r = last[i] / before[i], tail = 2 * degree * last[i] + noise;
+      if (last[i] <= noise)
         estimate[i] = 2 * last[i] + noise;
-        continue;
-      }
-      const double r = last[i] / before[i];
-      estimate[i] = r > slow ? std::numeric_limits<double>::infinity() : 2 * last[i] / (1 - r) + noise;
+      else if (r <= slow)
+        estimate[i] = 2 * last[i] / (1 - r) + noise;
+      else
+        estimate[i] = tail <= small * study_.model.accuracy ? tail : std::numeric_limits<double>::infinity();
     }
     return estimate;
   }
