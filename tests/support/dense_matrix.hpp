@@ -52,9 +52,9 @@ inline Point point_at(const Stack& stack, const Layer& layer, double bottom, dou
   return p;
 }
 
-/// All eigenvalues, lowest first, and the weight of psi in each when asked for.
+/// All eigenvalues, lowest first.
 struct Spectrum {
-  Eigen::VectorXd energy, psi_weight;
+  Eigen::VectorXd energy;
   int companions = 0;  ///< components chi: so many eigenvalues are valence-like when every pole lies below
   int below(double E) const {
     return static_cast<int>(std::lower_bound(energy.begin(), energy.end(), E) - energy.begin());
@@ -62,7 +62,7 @@ struct Spectrum {
 };
 
 /// `radians`: an element spans at most so much phase at `top` [eV].
-inline Spectrum spectrum(const Stack& stack, double top, bool weights = false, double radians = 3) {
+inline Spectrum spectrum(const Stack& stack, double top, double radians = 3) {
   struct Element {
     const Layer* layer;
     double bottom, t0, t1;
@@ -144,11 +144,10 @@ inline Spectrum spectrum(const Stack& stack, double top, bool weights = false, d
   if (chis > 0)
     H.bottomLeftCorner(chis, psis) = L.solve(H.bottomLeftCorner(chis, psis).transpose()).transpose().eval();
   const Eigen::SelfAdjointEigenSolver<Eigen::MatrixXd> solver(
-      H, weights ? Eigen::ComputeEigenvectors : Eigen::EigenvaluesOnly);  // reads the lower half
+      H, Eigen::EigenvaluesOnly);  // reads the lower half
   Spectrum result;
   result.energy = solver.eigenvalues();
   result.companions = chis;
-  if (weights) result.psi_weight = solver.eigenvectors().topRows(psis).colwise().squaredNorm().transpose();
   return result;
 }
 
