@@ -15,16 +15,21 @@ namespace {
 
 constexpr int most_levels = 40;        // rows of the table
 constexpr double worth_saying = 0.15;  // part of a level in a second layer
+constexpr double least_home = 0.1;     // below this no layer is its home
 
 // "wide well 55 %, narrow well 43 %"
 std::string home_of(const Study& study, const Levels& levels, int level) {
   const auto layers = study.stack.layers.size();
   std::vector<int> order(layers);
   std::iota(order.begin(), order.end(), 0);
-  const auto part = [&](int layer) { return levels.layer_probability(level, layer); };
+  // Rounded, so that layers that share a level evenly come in growth order on every machine.
+  const auto part = [&](int layer) {
+    return std::round(levels.layer_probability(level, layer) * 1e6) * 1e-6;
+  };
   const auto shown = std::min<std::size_t>(2, layers);
   std::partial_sort(order.begin(), order.begin() + static_cast<std::ptrdiff_t>(shown), order.end(),
-                    [&](int a, int b) { return part(a) > part(b); });
+                    [&](int a, int b) { return part(a) != part(b) ? part(a) > part(b) : a < b; });
+  if (part(order[0]) < least_home) return "many layers";
   std::string text;
   for (std::size_t i = 0; i < shown; ++i) {
     const int layer = order[i];
@@ -34,6 +39,16 @@ std::string home_of(const Study& study, const Levels& levels, int level) {
                         part(layer) * 100);
   }
   return text;
+}
+
+// To what a level is printed: the accuracy asked for, finer where a neighbour is near, never finer than its
+// error.
+double shown_error(const Answer& answer, const Levels& levels, int level) {
+  double near = answer.study.model.accuracy;
+  for (const int other : {level - 1, level + 1})
+    if (other >= 0 && other < levels.count())
+      near = std::min(near, std::abs(levels.energy(other) - levels.energy(level)) / 10);
+  return std::max(levels.error_estimate(level), near);
 }
 
 std::string group_of(const Levels& levels, int level) {
@@ -51,20 +66,22 @@ std::string level_table(const Answer& answer, const CarrierAnswer& part, int wid
   const Levels& levels = part.levels;
   const auto name = name_of(levels.profile.carrier);
   const bool hole = levels.profile.carrier != Carrier::electron;
-  std::string text = fmt::format("Levels of the {}{}\n", name,
-                                 hole ? ", energies downward from the highest valence band edge"
-                                      : ", energies on the scale of the band edges");
+  std::string text =
+      wrapped(fmt::format("Levels of the {}{}{}", name, part.minibands ? " at Bloch phase 0" : "",
+                          hole ? ", energies downward from the highest valence band edge"
+                               : ", energies on the scale of the band edges"),
+              width, 0, 2);
   if (levels.count() == 0) return text + "  none in the window\n";
   Table table({{"level", "", Align::number},
                {"energy", "meV"},
-               {"lives in", "", Align::left},
+               {"lives in", "", Align::left, 24},
                {"mean z", "nm"},
                {"spread", "nm"},
-               {"mass in plane", "m0", Align::number, 1},
+               {"mass in plane", "m0", Align::number, 0, 1},
                {"", "", Align::left}});
   bool box = false;
   for (int i = 0; i < std::min(levels.count(), most_levels); ++i) {
-    const double error = std::max(levels.error_estimate(i), answer.study.model.accuracy) * 1e3;
+    const double error = shown_error(answer, levels, i) * 1e3;
     std::string remark = group_of(levels, i);
     if (answer.study.model.ends == Ends::hard && levels.bound[static_cast<std::size_t>(i)] == 0) {
       remark += remark.empty() ? "box" : ", box";
@@ -79,7 +96,7 @@ std::string level_table(const Answer& answer, const CarrierAnswer& part, int wid
   if (levels.count() > most_levels)
     table.add_remark(fmt::format("... {} more in the result file", levels.count() - most_levels));
   text += table.text(width);
-  if (box) text += "  box: above the lower outer band edge, held by the hard ends alone\n";
+  if (box) text += wrapped("box: above the lower outer band edge, held by the hard ends alone", width, 2, 4);
   return text;
 }
 

@@ -18,9 +18,17 @@ constexpr double least_overlap = 0.01;  // squared overlap of a pair worth a lin
 constexpr double least_beat = 0.01;     // part of the strongest beat worth a line
 constexpr double least_dipole = 5e-4;   // below this a dipole is zero by symmetry or by numerical noise [nm]
 
-// The error of a difference of two levels, no finer than what was asked for.
+// To what a difference of two levels is printed: the accuracy asked for, finer where the difference is small,
+// never finer than the errors of the two.
+double shown_error(const Answer& answer, double energy, double first_error, double second_error) {
+  constexpr double digits = 1e-3;
+  return std::max(first_error + second_error,
+                  std::min(answer.study.model.accuracy, digits * std::abs(energy)));
+}
+
 double error_of_pair(const Answer& answer, const Levels& levels, int i, int j) {
-  return std::max(levels.error_estimate(i) + levels.error_estimate(j), answer.study.model.accuracy);
+  return shown_error(answer, levels.energy(j) - levels.energy(i), levels.error_estimate(i),
+                     levels.error_estimate(j));
 }
 
 std::string wavelength_text(double energy, double error) {
@@ -49,15 +57,20 @@ std::string transition_table(const Answer& answer, const CarrierAnswer& part, in
                {"to"},
                {"energy", "meV"},
                {"wavelength", "um"},
-               {"frequency", "THz", Align::number, 2},
+               {"frequency", "THz", Align::number, 0, 2},
                {"dipole", "nm"},
-               {"strength", "", Align::number, 1},
+               {"strength", "", Align::number, 0, 1},
                {"beat period", "ps"}});
   for (const auto& [from, to] : pairs) {
     const int i = from - 1, j = to - 1;
     if (i >= part.levels.count() || j >= part.levels.count()) continue;
     const double energy = light.energy(i, j), error = error_of_pair(answer, part.levels, i, j);
     const int digits = std::min(6, known_digits(energy, error));
+    if (std::abs(energy) <= error) {  // equal as far as is known: no wavelength, no period
+      table.add({std::to_string(from), std::to_string(to), to_error(energy * 1e3, error * 1e3), "-", "-",
+                 significant(std::abs(light.dipole(i, j)), 4), "-", "-"});
+      continue;
+    }
     const bool dark = std::abs(light.dipole(i, j)) < least_dipole;
     table.add({std::to_string(from), std::to_string(to), to_error(energy * 1e3, error * 1e3),
                wavelength_text(energy, error), significant(light.frequency(i, j), digits),
@@ -66,7 +79,7 @@ std::string transition_table(const Answer& answer, const CarrierAnswer& part, in
                significant(light.beat_period(i, j), digits)});
   }
   return fmt::format("Transitions of the {}\n", name_of(part.levels.profile.carrier)) + table.text(width) +
-         "  strength: oscillator strength with the free electron mass, negative downward\n";
+         wrapped("strength: oscillator strength with the free electron mass, negative downward", width, 2, 4);
 }
 
 std::string interband_table(const Answer& answer, const Interband& pairs, int width) {
@@ -74,7 +87,7 @@ std::string interband_table(const Answer& answer, const Interband& pairs, int wi
                {std::string(name_of(pairs.hole))},
                {"energy", "eV"},
                {"wavelength", "nm"},
-               {"overlap squared"}});
+               {"overlap", "squared"}});
   struct Row {
     Eigen::Index e, h;
     double overlap;
@@ -88,9 +101,12 @@ std::string interband_table(const Answer& answer, const Interband& pairs, int wi
             [&](const Row& a, const Row& b) { return pairs.energy(a.e, a.h) < pairs.energy(b.e, b.h); });
   const auto total = static_cast<std::size_t>(pairs.energy.size());
   const std::size_t shown = std::min(rows.size(), most_rows);
+  const Levels& electrons = answer.find(Carrier::electron)->levels;
+  const Levels& holes = answer.find(pairs.hole)->levels;
   for (std::size_t i = 0; i < shown; ++i) {
     const double energy = pairs.energy(rows[i].e, rows[i].h);
-    const double error = std::max(2 * answer.study.model.accuracy, 1e-6);
+    const double error =
+        shown_error(answer, energy, electrons.error_estimate(rows[i].e), holes.error_estimate(rows[i].h));
     table.add({std::to_string(rows[i].e + 1), std::to_string(rows[i].h + 1), to_error(energy, error),
                significant(wavelength_of(energy), std::min(6, known_digits(energy, error))),
                fmt::format("{:.4f}", rows[i].overlap)});
@@ -116,7 +132,7 @@ std::string beat_table(const Answer& answer, int width) {
                {"period", "ps"},
                {"frequency", "THz"},
                {"amplitude of <z>", "nm"},
-               {"wavelength", "um", Align::number, 1}});
+               {"wavelength", "um", Align::number, 0, 1}});
   const double strongest = motion.beats.empty() ? 0 : motion.beats.front().dipole_amplitude;
   std::size_t shown = 0;
   for (const Beat& beat : motion.beats) {

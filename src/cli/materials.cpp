@@ -143,7 +143,7 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
   const int width = output_width();
   std::vector<std::string> sources, remarks;
   bool recalled = false;
-  Table rows({{"value", "", Align::left, 1},
+  Table rows({{"value", "", Align::left, 10, 1},
               {""},
               {"unit", "", Align::left},
               {"source", "", Align::left},
@@ -165,16 +165,19 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
       fmt::format("{} at {:g} K, {}\n", alloy.text, environment.temperature,
                   environment.substrate ? "strained to " + environment.substrate->text : "unstrained");
   text += rows.text(width);
-  if (recalled) text += "  r: recalled from memory of the source, not read in print\n";
+  if (recalled) text += wrapped("r: recalled from memory of the source, not read in print", width, 2, 4);
   if (environment.substrate) {
     const StrainState strain = table.strain(alloy, environment);
-    text += fmt::format("\nStrain on {}: in plane {:.3f} %, along growth {:.3f} %\n",
-                        environment.substrate->text, strain.in_plane * 100, strain.along_growth * 100);
+    text += "\n" + wrapped(fmt::format("Strain on {}: in plane {:.3f} %, along growth {:.3f} %",
+                                       environment.substrate->text, strain.in_plane * 100,
+                                       strain.along_growth * 100),
+                           width, 0, 2);
     if (std::isfinite(strain.critical_thickness_buried))
-      text += fmt::format("  critical thickness {} nm on top, {} nm covered, {} nm in a superlattice\n",
-                          significant(strain.critical_thickness_overlayer, 3),
-                          significant(strain.critical_thickness_buried, 3),
-                          significant(strain.critical_thickness_superlattice, 3));
+      text += wrapped(fmt::format("critical thickness {} nm on top, {} nm covered, {} nm in a superlattice",
+                                  significant(strain.critical_thickness_overlayer, 3),
+                                  significant(strain.critical_thickness_buried, 3),
+                                  significant(strain.critical_thickness_superlattice, 3)),
+                      width, 2, 4);
   }
   text += numbered("Remarks", remarks, "(", ")", width) + numbered("Sources", sources, "[", "]", width);
   std::fputs(text.c_str(), stdout);

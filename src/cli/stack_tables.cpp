@@ -36,14 +36,11 @@ std::string density(double per_nm2) {
 
 std::string material_of(const Layer& layer) {
   if (!layer.grading) return layer.material.text;
-  return layer.material.text + " to " + layer.grading->to.text;
-}
-
-std::string grading_of(const Layer& layer) {
-  if (!layer.grading) return "";
-  if (layer.grading->power == 1) return "linear";
-  if (layer.grading->power == 2) return "parabolic";
-  return fmt::format("power {:g}", layer.grading->power);
+  const double power = layer.grading->power;
+  return fmt::format("{} to {}, {}", layer.material.text, layer.grading->to.text,
+                     power == 1   ? "linear"
+                     : power == 2 ? "parabolic"
+                                  : fmt::format("power {:g}", power));
 }
 
 }  // namespace
@@ -53,7 +50,7 @@ std::string headline(const Study& study, int width) {
   const Model& model = study.model;
   std::string text =
       fmt::format("{}, {} nm, {:g} K", counted(static_cast<long long>(stack.layers.size()), "layer"),
-                  significant(stack.length(), 5), stack.environment.temperature);
+                  fmt::format("{:.6g}", stack.length()), stack.environment.temperature);
   if (study.bias)
     text += fmt::format(", bias {:g} V ({:.4g} kV/cm)", *study.bias, study.field * 1e4);
   else if (study.field != 0)
@@ -78,18 +75,17 @@ std::string layer_table(const Study& study, int width, bool all) {
   const Stack& stack = study.stack;
   const auto faces = stack.faces();
   Table table({{"", "", Align::number},
-               {"layer", "", Align::left},
-               {"material", "", Align::left},
-               {"shape", "", Align::left, 5},
+               {"layer", "", Align::left, 16},
+               {"material", "", Align::left, 33},
                {"thickness", "nm"},
-               {"", "ML", Align::number, 4},
-               {"from z", "nm", Align::number, 3},
+               {"", "ML", Align::number, 0, 5},
+               {"from z", "nm", Align::number, 0, 4},
                {"band edge", "meV"},
-               {"mass", "m0", Align::number, 1},
-               {"gap", "eV", Align::number, 2},
-               {"strain", "%", Align::number, 3},
-               {"donors", "cm-2", Align::number, 1},
-               {"acceptors", "cm-2", Align::number, 1}});
+               {"mass", "m0", Align::number, 0, 1},
+               {"gap", "eV", Align::number, 0, 3},
+               {"strain", "%", Align::number, 0, 2},
+               {"donors", "cm-2", Align::number, 0, 1},
+               {"acceptors", "cm-2", Align::number, 0, 1}});
   std::size_t folded = 0, folded_from = 0;
   int last_copy = 0;
   const auto close_fold = [&] {
@@ -126,8 +122,7 @@ std::string layer_table(const Study& study, int width, bool all) {
     }
     std::string name = layer.name;
     if (all && layer.copy > 0 && !name.empty()) name += fmt::format("[{}]", layer.copy);
-    table.add({std::to_string(i + 1), name, material_of(layer), grading_of(layer),
-               fmt::format("{:.3f}", layer.thickness),
+    table.add({std::to_string(i + 1), name, material_of(layer), fmt::format("{:.3f}", layer.thickness),
                std::isfinite(layer.monolayer) && layer.monolayer > 0
                    ? fmt::format("{:.1f}", layer.thickness / layer.monolayer)
                    : "",
@@ -140,7 +135,8 @@ std::string layer_table(const Study& study, int width, bool all) {
     table.add_remark(fmt::format("... {} more; --verbose lists every layer",
                                  counted(static_cast<long long>(hidden), "layer")));
   return "Layers, from the substrate up\n" + table.text(width) +
-         (study.field != 0 ? "  band edge: of the conduction band, without the field\n" : "");
+         (study.field != 0 ? wrapped("band edge: of the conduction band, without the field", width, 2, 4)
+                           : "");
 }
 
 std::string value_table(const Study& study, int width) {
@@ -163,7 +159,7 @@ std::string strain_table(const Study& study, int width) {
   Table table({{"layer", "", Align::left},
                {"material", "", Align::left},
                {"in plane", "%"},
-               {"along growth", "%", Align::number, 2},
+               {"along growth", "%", Align::number, 0, 2},
                {"thickest run", "nm"},
                {"critical", "nm"},
                {"", "", Align::left}});
@@ -175,17 +171,16 @@ std::string strain_table(const Study& study, int width) {
                std::isfinite(row.critical) ? significant(row.critical, 3) : "-",
                row.over ? "thicker than critical" : ""});
   }
-  std::string text = head + table.text(width);
-  text += fmt::format("  mean in-plane strain {:.4f} %", report.mean_strain * 100);
+  std::string mean = fmt::format("mean in-plane strain {:.4f} %", report.mean_strain * 100);
   if (std::isfinite(report.stress_weighted_strain))
-    text += fmt::format(", weighted with the stiffness {:.4f} % (0 when balanced)",
+    mean += fmt::format(", weighted with the stiffness {:.4f} % (0 when balanced)",
                         report.stress_weighted_strain * 100);
-  return text + "\n" +
+  return head + table.text(width) + wrapped(mean, width, 2, 4) +
          wrapped(
              "critical: the equilibrium thickness above which the layer relaxes by dislocations (Matthews "
              "and "
              "Blakeslee), for a layer that is covered, on top, or part of a superlattice as it is here",
-             width, 2, 2);
+             width, 2, 4);
 }
 
 }  // namespace wellwright::cli

@@ -6,7 +6,7 @@
 
 #include <algorithm>
 #include <cassert>
-#include <numeric>
+#include <optional>
 
 #include "cli/text.hpp"
 #include "wellwright/diagnostics.hpp"
@@ -14,7 +14,7 @@
 namespace wellwright::cli {
 namespace {
 
-constexpr int indent = 2, gap = 2, shortest_name = 10;
+constexpr int indent = 2, gap = 2;
 
 // Where the decimal point of a number stands, or would stand.
 std::size_t point_of(const std::string& cell) {
@@ -74,26 +74,41 @@ std::string Table::text(int width) const {
       if (shown[c]) sum += size[c] + gap;
     return sum;
   };
-  std::string left_out;
-  while (total() > width) {
-    // Names give way first, the widest of them; then the columns that matter least.
-    std::size_t widest = n, least = n;
+  const auto widest_name = [&](bool without_limit) {
+    std::optional<std::size_t> widest;
     for (std::size_t c = 0; c < n; ++c) {
-      if (!shown[c]) continue;
-      const int least_size = std::max(shortest_name, displayed_width(columns_[c].head));
-      if (columns_[c].align == Align::left && size[c] > least_size && (widest == n || size[c] > size[widest]))
-        widest = c;
-      if (columns_[c].rank > 0 && (least == n || columns_[c].rank >= columns_[least].rank)) least = c;
+      if (!shown[c] || columns_[c].align != Align::left) continue;
+      const int least = without_limit ? 5 : std::max(columns_[c].least, displayed_width(columns_[c].head));
+      if (size[c] > least && (!widest || size[c] > size[*widest])) widest = c;
     }
-    if (widest < n) {
-      --size[widest];
-    } else if (least < n) {
-      shown[least] = false;
-      left_out = columns_[least].head + (left_out.empty() ? "" : ", ") + left_out;
+    return widest;
+  };
+  std::vector<std::size_t> dropped;
+  while (total() > width) {
+    // Names give way first, the widest of them; then the columns that matter least; then names without limit.
+    std::size_t last = n;
+    for (std::size_t c = 0; c < n; ++c)
+      if (shown[c] && columns_[c].rank > 0 && (last == n || columns_[c].rank >= columns_[last].rank))
+        last = c;
+    if (const auto name = widest_name(false)) {
+      --size[*name];
+    } else if (last < n) {
+      shown[last] = false;
+      dropped.push_back(last);
+    } else if (const auto wide = widest_name(true)) {
+      --size[*wide];
     } else {
       break;
     }
   }
+  // A wide column that went may leave room for narrower ones that went before it.
+  for (auto c = dropped.rbegin(); c != dropped.rend(); ++c)
+    if (total() + gap + size[*c] <= width) shown[*c] = true;
+  std::string left_out;
+  for (std::size_t c = 0; c < n; ++c)
+    if (!shown[c] && std::find(dropped.begin(), dropped.end(), c) != dropped.end())
+      left_out +=
+          (left_out.empty() ? "" : ", ") + (columns_[c].head.empty() ? columns_[c].unit : columns_[c].head);
   // Leaving a column out makes room again for the names that were shortened for it.
   for (std::size_t c = 0; c < n && !left_out.empty(); ++c) {
     if (!shown[c] || columns_[c].align != Align::left) continue;
@@ -120,7 +135,7 @@ std::string Table::text(int width) const {
   if (units.size() > 1) text += units;
   for (std::size_t r = 0; r < rows_.size(); ++r)
     text += rows_[r].remark.empty() ? line_of([&](std::size_t c) { return cells[r][c]; })
-                                    : spaces(indent) + rows_[r].remark + "\n";
+                                    : wrapped(rows_[r].remark, width, indent, indent + 4);
   if (!left_out.empty())
     text += wrapped("not shown for lack of width: " + left_out, width, indent, indent + 2);
   return text;

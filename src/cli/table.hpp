@@ -14,7 +14,8 @@ struct Column {
   std::string head;
   std::string unit = {};
   Align align = Align::number;
-  int rank = 0;  ///< columns of the highest rank go first when the table is too wide; 0 always stays
+  int least = 10;  ///< names are not shortened below this many columns
+  int rank = 0;    ///< columns of the highest rank go first when the table is too wide; 0 always stays
 };
 
 class Table {

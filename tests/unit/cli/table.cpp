@@ -23,8 +23,8 @@ Table long_table() {
   Table table({{"no"},
                {"layer", "", Align::left},
                {"thickness", "nm"},
-               {"mass", "m0", Align::number, 1},
-               {"gap", "eV", Align::number, 2}});
+               {"mass", "m0", Align::number, 0, 1},
+               {"gap", "eV", Align::number, 0, 2}});
   table.add({"1", "a rather long name of a layer", "20.000", "0.0919", "1.9220"});
   table.add({"2", "Gr\u00fcndling", "7.5", "0.0670", "1.5190"});
   return table;
