@@ -7,7 +7,7 @@ top=$(cd "$(dirname "${BASH_SOURCE[0]}")/../.." && pwd)
 . "$top/.setup/install.sh"
 
 install_packages build test fuzz
-configure build-fuzz -DCMAKE_BUILD_TYPE=RelWithDebInfo -DCMAKE_CXX_COMPILER=clang++ -DCMAKE_C_COMPILER=clang \
+configure build-fuzz -DCMAKE_BUILD_TYPE=Fuzz -DCMAKE_CXX_FLAGS="-O1 -g1" -DCMAKE_CXX_COMPILER=clang++ -DCMAKE_C_COMPILER=clang \
   -DWELLWRIGHT_FUZZ=ON -DWELLWRIGHT_TESTS=ON -DWELLWRIGHT_STRICT=OFF
 cmake --build "$top/build-fuzz" -j "$(job_count)" --target fuzz_study
 corpus=$top/build-fuzz/corpus seeds=$top/build-fuzz/seeds
