@@ -4,6 +4,7 @@
 Usage: reading.py WELLWRIGHT SOURCE_FOLDER
 """
 import json
+import os
 import pathlib
 import shutil
 import subprocess
@@ -83,6 +84,46 @@ def check_whole(file):
     return names
 
 
+HEAD = """# The result file
+
+HDF5, and valid netCDF-4. Energies eV, lengths nm, times ps, sheet densities cm-2, fields kV/cm, frequencies THz. Groups of
+holes carry the suffix `_heavy_hole` or `_light_hole` and hold the same datasets. Undefined doubles are NaN; an empty
+answer is an axis of length 0. Groups of later steps (charge, absorption, lifetimes, planning) are not there yet.
+
+Root attributes: `title`, `program`, `version`, `format` ("wellwright result"), `format_version`, `created` (UTC),
+`study` (the whole text), `settings` (the --set list), `materials` (YAML of the entries used, with sources),
+`assumptions`, `warnings`, `converged`, `default` (the group to look at first). `/levels` carries `certified`,
+`count_below`, `window_bottom`, `window_top` and, where not certified, `reason`; `/interband` carries `gap`; `/dynamics`
+carries `captured_norm` and, where defined, `classical_period` and `revival_time`.
+"""
+
+
+def describe(file, pages):
+    """Collects dimensions, units and words of every dataset, hole groups under their electron name."""
+    with netCDF4.Dataset(file) as dataset:
+        for name in groups(dataset):
+            if name == "/":
+                continue
+            page = pages.setdefault(name.replace("_heavy_hole", "").replace("_light_hole", ""), {})
+            for variable in dataset[name].variables.values():
+                words = variable.long_name + ("; " + variable.comment if "comment" in variable.ncattrs() else "")
+                units = variable.units if "units" in variable.ncattrs() else ""
+                page.setdefault(variable.name, (", ".join(variable.dimensions), units, words))
+
+
+def check_page(pages):
+    """docs/reference/result-file.md lists what real files hold; WELLWRIGHT_WRITE_PAGES writes it anew."""
+    text = HEAD
+    for name, datasets in pages.items():
+        text += f"\n## {name}\n\n| dataset | axes | unit | content |\n|---|---|---|---|\n"
+        for dataset, (axes, units, words) in datasets.items():
+            text += f"| {dataset} | {axes} | {units} | {words.replace('|', chr(92) + '|')} |\n"
+    page = SOURCE / "docs" / "reference" / "result-file.md"
+    if os.environ.get("WELLWRIGHT_WRITE_PAGES"):
+        page.write_text(text)
+    assert page.read_text() == text, "docs/reference/result-file.md differs from what files hold"
+
+
 def check_levels(file, answer):
     for part in answer["carriers"]:
         suffix = "" if part["carrier"] == "electron" else "_" + part["carrier"].replace(" ", "_")
@@ -109,9 +150,11 @@ def check_levels(file, answer):
 
 
 def main():
+    pages = {}
     example = next((SOURCE / "examples").glob("010-*/study.yaml"))
     file, answer = run("example", example.read_text())
     names = check_whole(file)
+    describe(file, pages)
     for name in ("/layers", "/profile", "/levels", "/dispersion", "/sensitivity", "/transitions", "/dynamics", "/dynamics/density", "/beats"):
         assert name in names, name
     check_levels(file, answer)
@@ -136,6 +179,7 @@ def main():
 
     file, answer = run("periodic", PERIODIC)
     names = check_whole(file)
+    describe(file, pages)
     for name in ("/minibands", "/levels_heavy_hole", "/levels_light_hole", "/interband_heavy_hole", "/interband_light_hole", "/minibands_heavy_hole"):
         assert name in names, name
     check_levels(file, answer)
@@ -145,6 +189,7 @@ def main():
 
     file, answer = run("pairs", PAIRS)
     check_whole(file)
+    describe(file, pages)
     check_levels(file, answer)
     pairs = xr.open_dataset(file, group="interband_heavy_hole")
     electrons = xr.open_dataset(file, group="levels").energy.values
@@ -157,6 +202,7 @@ def main():
     file, answer = run("empty", EMPTY)
     check_whole(file)
     assert xr.open_dataset(file, group="levels").sizes["level"] == 0
+    check_page(pages)
     print("all results were read by h5dump, ncdump, netCDF4, h5netcdf and xarray")
 
 
