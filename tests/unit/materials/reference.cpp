@@ -78,10 +78,12 @@ std::string page_of_table() {
   const std::string errors = root + "/materials/standard-errors.yaml",
                     sources = root + "/materials/sources.yaml";
   page += "## Standard errors by class\n\n| class | one standard error | source |\n|---|---|---|\n";
-  for (const Node::Entry& e : read_yaml(read_file(errors), errors)["standard_errors"].entries())
+  const Node error_table = read_yaml(read_file(errors), errors),
+             source_table = read_yaml(read_file(sources), sources);
+  for (const Node::Entry& e : error_table["standard_errors"].entries())
     page += "| " + e.key + " | " + e.value["value"].text() + " | " + cell(e.value["source"].text()) + " |\n";
   page += "\n## Sources\n\n";
-  for (const Node::Entry& s : read_yaml(read_file(sources), sources)["sources"].entries())
+  for (const Node::Entry& s : source_table["sources"].entries())
     page += "- **" + s.key + "**: " + s.value.text() + "\n";
   return page;
 }
