@@ -24,7 +24,7 @@ library(fmt      ITEMS fmt::fmt PACKAGE fmt)
 library(json     ITEMS nlohmann_json::nlohmann_json)
 library(cli11    ITEMS CLI11::CLI11)
 library(spectra  ITEMS ${SPECTRA_INCLUDE})
-library(hdf5     ITEMS ${HDF5_INCLUDE_DIRS} ${HDF5_CXX_LIBRARIES} ${HDF5_HL_LIBRARIES} ${HDF5_C_LIBRARIES} PACKAGE hdf5)
+library(hdf5     ITEMS ${hdf5_items} PACKAGE hdf5)
 library(tbb      ITEMS TBB::tbb PACKAGE TBB)
 
 # Flags for our own code only.
