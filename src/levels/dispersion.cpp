@@ -11,6 +11,7 @@
 namespace wellwright {
 namespace {
 
+constexpr double enough = 1e-9;   // [eV] residual of E(k): the energy is good to its square over the gaps
 constexpr double furthest = 100;  // [eV] above a level at which the search for a band gives up
 
 // Level number `index` (0-based) at a Bloch phase: the condensed faces give S_00 + S_NN + 2 cos(phase) S_0N =
@@ -78,9 +79,11 @@ Dispersion in_plane_dispersion(const Levels& levels, const Eigen::VectorXd& k) {
     Factors factors(hamiltonian);
     Rayleigh rayleigh(hamiltonian, factors);
     // Each level is followed by itself; members of a group split by less than the group's width.
+    const double last = c > 0 ? k[c - 1] : 0;
     for (int i = 0; i < levels.count(); ++i) {
       double residual = 0;
-      if (!rayleigh.polish(energy[i], psi.col(i), residual))
+      energy[i] += constants::hbar2_over_2m0 * (k[c] * k[c] - last * last) / levels.in_plane_mass[i];
+      if (!rayleigh.polish(energy[i], psi.col(i), residual, enough))
         throw NotConverged("the energies at in-plane momentum do not converge");
     }
     dispersion.energy.col(c) = energy;
