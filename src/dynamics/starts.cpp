@@ -6,6 +6,7 @@
 
 #include <Eigen/Cholesky>
 #include <Eigen/Eigenvalues>
+#include <algorithm>
 #include <cmath>
 #include <complex>
 #include <numbers>
@@ -28,20 +29,37 @@ void check_level(int level, const Levels& levels, const Place& place) {
                    place, "ask for more levels under model: levels");
 }
 
-// The levels' grid, cut so that a packet of this width and wavenumber is resolved.
+constexpr int far = 12;               // spreads: beyond, the density is below 1e-31 of its peak
+constexpr double most_pieces = 4000;  // cuts of a packet; finer waves than these are in no level
+
+// The levels' grid, cut about the centre into pieces in which a packet of this width and wavenumber is
+// smooth.
 Grid grid_for(const Grid& grid, const PacketStart& packet) {
-  const double longest =
-      std::min(2 * packet.spread, packet.wavenumber == 0 ? 1e300 : 4 / std::abs(packet.wavenumber));
-  std::vector<std::vector<double>> cuts(static_cast<std::size_t>(grid.elements()));
-  for (int e = 0; e < grid.elements(); ++e) {
-    const double middle = 0.5 * (grid.boundaries[static_cast<std::size_t>(e)] +
-                                 grid.boundaries[static_cast<std::size_t>(e) + 1]);
-    if (std::abs(middle - packet.centre) > 12 * packet.spread + grid.width(e)) continue;
-    const int pieces = std::min(2000, static_cast<int>(std::ceil(grid.width(e) / longest)));
-    for (int i = 1; i < pieces; ++i)
-      cuts[static_cast<std::size_t>(e)].push_back(static_cast<double>(i) / pieces);
+  const double close = 1e-12 * std::max(1.0, grid.boundaries.back());
+  const double wave = packet.wavenumber == 0 ? 1e300 : 4 / std::abs(packet.wavenumber);
+  const double extent = std::min(2 * far * packet.spread, grid.boundaries.back());
+  const double piece = std::max({std::min(2 * packet.spread, wave), extent / most_pieces, 10 * close});
+  std::vector<double> all = grid.boundaries;
+  const int reach =
+      static_cast<int>(std::ceil(std::min(far * packet.spread, grid.boundaries.back()) / piece));
+  for (int i = -reach; i <= reach; ++i) {
+    const double z = packet.centre + i * piece;
+    if (z > 0 && z < grid.boundaries.back()) all.push_back(z);
   }
-  return make_grid(grid.boundaries, cuts, std::max(grid.degree, 16));
+  std::sort(all.begin(), all.end());
+  std::vector<double> boundaries{all.front()};
+  for (const double z : all)
+    if (z - boundaries.back() > close) boundaries.push_back(z);
+  boundaries.back() = grid.boundaries.back();
+  return make_grid(boundaries, {}, std::max(grid.degree, 16));
+}
+
+// Least-squares expansion of an envelope in the levels' envelopes from its overlaps with them: the Gram
+// matrix is not the identity where the mass depends on energy. Column 0: real parts.
+Eigen::MatrixXd expanded(const Levels& levels, const Eigen::MatrixXd& overlap) {
+  const Eigen::MatrixXd gram =
+      levels.envelope.transpose() * (levels.profile.grid.weight.asDiagonal() * levels.envelope);
+  return gram.ldlt().solve(overlap);
 }
 
 }  // namespace
@@ -64,11 +82,12 @@ Started start_packet(const PacketStart& packet, const Levels& levels, const Plac
     g[r] = peak * std::exp(-0.25 * x * x) * std::polar(1.0, packet.wavenumber * (grid.z[r] - packet.centre));
   }
   const Eigen::VectorXcd overlap = psi.transpose() * (grid.weight.asDiagonal() * g);
-  const Eigen::MatrixXd gram = levels.envelope.transpose() * (own.weight.asDiagonal() * levels.envelope);
-  const Eigen::LDLT<Eigen::MatrixXd> factors(gram);
+  Eigen::MatrixXd parts(overlap.size(), 2);
+  parts << overlap.real(), overlap.imag();
+  parts = expanded(levels, parts);
   Eigen::VectorXcd amplitude(overlap.size());
-  amplitude.real() = factors.solve(overlap.real());
-  amplitude.imag() = factors.solve(overlap.imag());
+  amplitude.real() = parts.col(0);
+  amplitude.imag() = parts.col(1);
   const double captured =
       std::clamp(overlap.dot(amplitude).real(), 0.0, 1.0);  // one minus the squared residual
   if (captured < 0.5)
@@ -169,11 +188,11 @@ Started start_photoexcited(const PhotoexcitedStart& start, const Levels& levels,
                      fmt::format("the nearest line lies at {:.2f} meV, with overlap {:.3f}",
                                  1e3 * line[nearest_line], std::abs(overlap[nearest_line])));
   }
-  // What the levels left out could add at most: the rest of the hole's envelope at the spectrum above the
-  // last line.
+  // What the levels left out could add at most: the part of the hole's envelope that they do not span, at
+  // the spectrum above the last line.
   const double last = line[line.size() - 1];
-  const double beyond =
-      std::max(0.0, 1 - overlap.squaredNorm()) * std::pow(photon > last ? 1.0 : spectrum(last), 2);
+  const double spanned = overlap.dot(expanded(levels, overlap).col(0));
+  const double beyond = std::max(0.0, 1 - spanned) * std::pow(photon > last ? 1.0 : spectrum(last), 2);
   return normalised(std::move(amplitude), reached / (reached + beyond));
 }
 
