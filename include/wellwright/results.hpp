@@ -22,6 +22,9 @@ void check_target(const std::string& path);
 /// FileTrouble.
 void write_csv(const Answer& answer, const std::string& folder);
 
+/// Throws FileTrouble now, before any work is done, if write_csv would refuse `folder` or a table in it.
+void check_csv(const std::string& folder);
+
 /// Levels, transitions, beats, notes and certificate as one JSON object (for `--json`).
 std::string to_json(const Answer& answer);
 

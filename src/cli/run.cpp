@@ -1,7 +1,6 @@
 // SPDX-License-Identifier: Apache-2.0
 // wellwright run: everything a study asks, into the result file and a summary.
 #include <fmt/format.h>
-#include <unistd.h>
 
 #include <cstdio>
 #include <filesystem>
@@ -23,24 +22,6 @@ std::string target_of(const Request& request) {
   return std::filesystem::path(request.operand).replace_extension(".h5").string();
 }
 
-// Throws now if the CSV tables cannot go there, before any work is done.
-void check_folder(const std::string& folder) {
-  std::error_code none;
-  const std::filesystem::path path(folder);
-  if (std::filesystem::exists(path, none)) {
-    if (!std::filesystem::is_directory(path, none)) throw FileTrouble(fmt::format("{} is no folder", folder));
-    if (access(folder.c_str(), W_OK) != 0)
-      throw FileTrouble(fmt::format("the folder {} cannot be written to", folder));
-    return;
-  }
-  // The nearest folder above that is there will hold the new one.
-  auto above = std::filesystem::absolute(path, none).parent_path();
-  while (!above.empty() && !std::filesystem::exists(above, none) && above != above.parent_path())
-    above = above.parent_path();
-  if (!std::filesystem::is_directory(above, none) || access(above.c_str(), W_OK) != 0)
-    throw FileTrouble(fmt::format("the folder {} cannot be made", folder));
-}
-
 std::string size_of(const std::string& path) {
   std::error_code trouble;
   const auto bytes = static_cast<double>(std::filesystem::file_size(path, trouble));
@@ -60,7 +41,7 @@ int run(const Request& request) {
   timings.lap("study and stack");
   const std::string target = target_of(request);
   check_target(target);
-  if (!request.csv.empty()) check_folder(request.csv);
+  if (!request.csv.empty()) check_csv(request.csv);
   if (tables) {
     std::fputs(headline(study, width).c_str(), stdout);
     std::fputc('\n', stdout);

@@ -15,9 +15,6 @@ namespace {
 constexpr std::size_t most_rows = 60;  // of layers, before the middle is left out
 
 std::string request_in_words(const LevelRequest& request) {
-  if (!request.in_layers.empty())
-    return counted(request.count.value_or(6), "level") + " that live" + (request.count == 1 ? "s" : "") +
-           " mostly in the named layers";
   if (request.below && request.above)
     return fmt::format("the levels between {:g} and {:g} meV", *request.above * 1e3, *request.below * 1e3);
   if (request.below) return fmt::format("the levels below {:g} meV", *request.below * 1e3);
@@ -63,7 +60,12 @@ std::string headline(const Study& study, int width) {
     if (model.carriers[i] == Carrier::electron)
       text += fmt::format(" ({})", bands[static_cast<std::size_t>(model.bands)]);
   }
-  text += model.ends == Ends::periodic ? " in the periodic cell, minibands" : " between hard ends";
+  const auto& homes = model.levels.in_layers;
+  for (std::size_t i = 0; i < std::min<std::size_t>(homes.size(), 3); ++i)
+    text += (i == 0 ? " mostly in " : ", ") +
+            stack.layers[static_cast<std::size_t>(homes[i])].label(homes[i] + 1);
+  if (homes.size() > 3) text += fmt::format(" and {} more", homes.size() - 3);
+  text += model.ends == Ends::periodic ? ", periodic cell, minibands" : ", hard ends";
   text += ", transitions";
   if (study.dynamics)
     text += fmt::format(", beats over {:g} ps after {}", study.dynamics->duration,

@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: Apache-2.0
 // Levels, transitions and beats as comma-separated tables with units in the header (RFC 4180).
 #include <fmt/format.h>
+#include <unistd.h>  // for access
 
 #include <cmath>
 #include <cstdio>
@@ -103,6 +104,26 @@ void write_table(const fs::path& path, const std::string& text) {
 }
 
 }  // namespace
+
+void check_csv(const std::string& folder) {
+  std::error_code none;
+  if (!fs::exists(folder, none)) {
+    // The nearest folder above that is there will hold the new one.
+    fs::path above = fs::absolute(folder, none).lexically_normal();
+    while (above.has_relative_path() && !fs::exists(above, none)) above = above.parent_path();
+    if (!fs::is_directory(above, none) || access(above.c_str(), W_OK) != 0)
+      throw FileTrouble(fmt::format("{}: the folder cannot be made", folder));
+    return;
+  }
+  if (!fs::is_directory(folder, none)) throw FileTrouble(fmt::format("{}: this is no folder", folder));
+  if (access(folder.c_str(), W_OK) != 0)
+    throw FileTrouble(fmt::format("{}: the folder cannot be written to", folder));
+  for (const Carrier carrier : {Carrier::electron, Carrier::heavy_hole, Carrier::light_hole}) {
+    check_table(fs::path(folder) / (group_of("levels", carrier) + ".csv"), level_header);
+    check_table(fs::path(folder) / (group_of("transitions", carrier) + ".csv"), transition_header);
+  }
+  check_table(fs::path(folder) / "beats.csv", beat_header);
+}
 
 void write_csv(const Answer& answer, const std::string& folder) {
   std::error_code error;
