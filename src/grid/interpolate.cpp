@@ -65,6 +65,20 @@ class Interpolator {
 
 Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values, const Grid& to) {
   Eigen::MatrixXd out(to.rows(), values.cols());
+  if (from.boundaries == to.boundaries) {  // another degree on the same elements: one small matrix for all
+    const ReferenceElement &here = reference_element(from.degree), &there = reference_element(to.degree);
+    const Eigen::VectorXd w = barycentric_weights(here.nodes);
+    Eigen::MatrixXd matrix(to.degree + 1, from.degree + 1);
+    Eigen::VectorXd row(from.degree + 1);
+    for (int i = 0; i <= to.degree; ++i) {
+      interpolation_row(here.nodes, w, there.nodes[i], row);
+      matrix.row(i) = row.transpose();
+    }
+    for (int e = 0; e < to.elements(); ++e)
+      out.middleRows(e * (to.degree + 1), to.degree + 1).noalias() =
+          matrix * values.middleRows(e * (from.degree + 1), from.degree + 1);
+    return out;
+  }
   Interpolator interpolator(from, values);
   int source = 0;
   for (int e = 0; e < to.elements(); ++e) {
