@@ -38,6 +38,9 @@ struct Grid {
 /// 1).
 Grid make_grid(const std::vector<double>& faces, const std::vector<std::vector<double>>& cuts, int degree);
 
+/// d/dz of element-local functions [1/nm], each column by itself.
+Eigen::MatrixXd slope_of(const Grid& grid, const Eigen::MatrixXd& local);
+
 /// Values of an element-local function on `to` from its values on `from`, where both have the same boundaries
 /// or `to` refines `from` in degree or elements. Columns are functions.
 Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values, const Grid& to);

@@ -34,4 +34,14 @@ Grid make_grid(const std::vector<double>& faces, const std::vector<std::vector<d
   return grid;
 }
 
+Eigen::MatrixXd slope_of(const Grid& grid, const Eigen::MatrixXd& local) {
+  const int n = grid.degree + 1;
+  const ReferenceElement& reference = reference_element(grid.degree);
+  Eigen::MatrixXd slope(local.rows(), local.cols());
+  for (int e = 0; e < grid.elements(); ++e)
+    slope.middleRows(e * n, n).noalias() =
+        (2 / grid.width(e)) * (reference.derivative * local.middleRows(e * n, n));
+  return slope;
+}
+
 }  // namespace wellwright

@@ -79,16 +79,6 @@ double sign_of(const Eigen::VectorXd& psi) {
 
 }  // namespace
 
-Eigen::MatrixXd slope_of(const Grid& grid, const Eigen::MatrixXd& local) {
-  const int n = grid.degree + 1;
-  const ReferenceElement& reference = reference_element(grid.degree);
-  Eigen::MatrixXd slope(local.rows(), local.cols());
-  for (int e = 0; e < grid.elements(); ++e)
-    slope.middleRows(e * n, n).noalias() =
-        (2 / grid.width(e)) * (reference.derivative * local.middleRows(e * n, n));
-  return slope;
-}
-
 Eigen::VectorXd density_of(const Hamiltonian& hamiltonian, double energy, const Eigen::VectorXd& psi) {
   const Profile& profile = hamiltonian.profile();
   const Eigen::VectorXd local = scatter(profile.grid, psi);

@@ -17,7 +17,4 @@ Levels chosen(const Levels& levels, const std::vector<int>& indices);
 /// Density of all components of one pair at the element-local nodes [1/nm], normalised in the full product.
 Eigen::VectorXd density_of(const Hamiltonian& hamiltonian, double energy, const Eigen::VectorXd& psi);
 
-/// d psi / dz at the element-local nodes from element-local values, each column by itself.
-Eigen::MatrixXd slope_of(const Grid& grid, const Eigen::MatrixXd& local);
-
 }  // namespace wellwright

@@ -11,16 +11,20 @@ namespace {
 
 constexpr double unknown = std::numeric_limits<double>::quiet_NaN();
 
+// A value that follows from others, with the source of one of them; the study's own stays.
+void set_derived(Binary& b, P p, double value, P from, std::string_view note) {
+  Origin& origin = b.origins[static_cast<std::size_t>(p)];
+  if (origin.overridden || std::isnan(value)) return;
+  at(b.values, p) = value;
+  origin = b.origins[static_cast<std::size_t>(from)];
+  origin.note = note;
+}
+
 // V01 gives masses along [001] and in the plane of (001) from the Luttinger parameters.
 void hole_masses_of_cubic(Binary& b) {
   const double g1 = at(b.values, P::luttinger_1), g2 = at(b.values, P::luttinger_2);
-  const Origin& from = b.origins[static_cast<std::size_t>(P::luttinger_1)];
   const auto set = [&](P p, double value) {
-    Origin& origin = b.origins[static_cast<std::size_t>(p)];
-    if (origin.overridden || std::isnan(value)) return;
-    at(b.values, p) = value;
-    origin = from;
-    origin.note = "from the Luttinger parameters";
+    set_derived(b, p, value, P::luttinger_1, "from the Luttinger parameters");
   };
   set(P::heavy_hole_mass, 1 / (g1 - 2 * g2));
   set(P::light_hole_mass, 1 / (g1 + 2 * g2));
@@ -37,13 +41,8 @@ void hole_masses_of_wurtzite(Binary& b) {
   const double A1 = at(b.values, P::valence_a1), A2 = at(b.values, P::valence_a2),
                A3 = at(b.values, P::valence_a3), A4 = at(b.values, P::valence_a4);
   const double share = upper / (upper - lower);
-  const Origin& from = b.origins[static_cast<std::size_t>(P::valence_a1)];
   const auto set = [&](P p, double value) {
-    Origin& origin = b.origins[static_cast<std::size_t>(p)];
-    if (origin.overridden || std::isnan(value)) return;
-    at(b.values, p) = value;
-    origin = from;
-    origin.note = "from the valence-band parameters A, unstrained";
+    set_derived(b, p, value, P::valence_a1, "from the valence-band parameters A, unstrained");
   };
   set(P::heavy_hole_mass, -1 / (A1 + A3));
   set(P::heavy_hole_in_plane_mass, -1 / (A2 + A4));

@@ -18,16 +18,6 @@ using constants::hbar2_over_2m0;
 constexpr double undefined = std::numeric_limits<double>::quiet_NaN();
 constexpr double coincident = 1e-10;  // [eV] levels closer than this have no transition
 
-// d/dz of element-local columns.
-Eigen::MatrixXd slopes(const Grid& grid, const Eigen::MatrixXd& local) {
-  const int n = grid.degree + 1;
-  const Eigen::MatrixXd& D = reference_element(grid.degree).derivative;
-  Eigen::MatrixXd out(local.rows(), local.cols());
-  for (int e = 0; e < grid.elements(); ++e)
-    out.middleRows(e * n, n).noalias() = (2 / grid.width(e)) * (D * local.middleRows(e * n, n));
-  return out;
-}
-
 // <z psi|(H - E)|z psi> and <m0/m>: half the double commutator [z, [H, z]], one number a level.
 void sum_rule(const Levels& levels, Transitions& t) {
   const Hamiltonian hamiltonian(levels.profile);
@@ -48,7 +38,7 @@ void sum_rule(const Levels& levels, Transitions& t) {
 Eigen::MatrixXd velocity_moment(const Levels& levels) {
   const Grid& grid = levels.profile.grid;
   const Coefficients& at = levels.profile.at;
-  const Eigen::MatrixXd slope = slopes(grid, levels.envelope);
+  const Eigen::MatrixXd slope = slope_of(grid, levels.envelope);
   const Eigen::VectorXd w = hbar2_over_2m0 * grid.weight.cwiseProduct(at.a0);
   Eigen::MatrixXd half = slope.transpose() * (w.asDiagonal() * levels.envelope);
   for (int j = 0; j < at.poles(); ++j) {

@@ -7,6 +7,10 @@
 #include "levels/operator.hpp"
 #include "support/hand_made.hpp"
 
+#if defined(__GNUC__) && !defined(__clang__)
+#pragma GCC diagnostic ignored "-Wmismatched-new-delete"  // both are ours and go by malloc and free
+#endif
+
 namespace {
 long allocations = 0;
 }
