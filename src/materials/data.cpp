@@ -85,18 +85,10 @@ double AlloyRecord::excess(P p, double x, double from_value, double to_value) co
 }
 
 void derive(Binary& binary) {
-  if (binary.structure == Structure::wurtzite) {
+  if (binary.structure == Structure::wurtzite)
     hole_masses_of_wurtzite(binary);
-    return;
-  }
-  hole_masses_of_cubic(binary);
-  double& in_plane = at(binary.values, P::electron_in_plane_mass);
-  Origin& origin = binary.origins[static_cast<std::size_t>(P::electron_in_plane_mass)];
-  if (!origin.overridden) {
-    in_plane = at(binary.values, P::electron_mass);
-    origin = binary.origins[static_cast<std::size_t>(P::electron_mass)];
-    origin.overridden = false;
-  }
+  else
+    hole_masses_of_cubic(binary);  // its in-plane electron mass is the one along z
 }
 
 void apply_row(MaterialTable::Data& data, const RawValue& row) {

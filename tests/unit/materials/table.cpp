@@ -122,6 +122,17 @@ TEST_CASE("A layer on its own substrate is unstrained; strain keeps the volume r
   CHECK(compression.heavy_hole_edge > compression.light_hole_edge);
 }
 
+TEST_CASE("A cubic alloy has one electron mass, along z and in the plane, unless the study says otherwise") {
+  for (const char* name : {"GaAs", "In0.53Ga0.47As", "GaAs0.5Sb0.5"}) {
+    const BandParameters b = table.resolve(alloy(table, name), at(300));
+    CHECK(b.electron_in_plane_mass == b.electron_mass);
+  }
+  const MaterialTable other = with("GaAs: {electron_in_plane_mass: 0.07}");
+  CHECK(other.resolve(alloy(other, "GaAs"), at(300)).electron_in_plane_mass == 0.07);
+  const BandParameters gan = table.resolve(alloy(table, "GaN"), at(300));
+  CHECK(gan.electron_in_plane_mass != gan.electron_mass);
+}
+
 TEST_CASE("Parameters are smooth through the ends of the composition") {
   const Alloy a = alloy(table, "Al0.3Ga0.7As");
   const auto gap = [&](double x) { return table.resolve(a.with_composition(x), at(300)).band_gap; };
