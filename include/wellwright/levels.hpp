@@ -56,7 +56,8 @@ struct Dispersion {
   Eigen::VectorXd k;
   Eigen::MatrixXd energy;  ///< [eV]
 };
-Dispersion in_plane_dispersion(const Levels& levels, const Eigen::VectorXd& k);
+/// Throws NotConverged, Stopped.
+Dispersion in_plane_dispersion(const Levels& levels, const Eigen::VectorXd& k, const Progress& progress = {});
 
 /// Energies over the Bloch phase of a periodic stack: row band, column phase (0 to pi) [eV].
 struct Minibands {

@@ -34,7 +34,8 @@ CarrierAnswer answer_for(const Study& study, Carrier carrier, Notes& notes, cons
   const std::string name(name_of(carrier));
   part.levels = solve_levels(study, carrier, notes, progress);
   watch.lap(fmt::format("levels of the {}", name));
-  part.dispersion = in_plane_dispersion(part.levels, Eigen::VectorXd::LinSpaced(k_points, 0, widest_k));
+  part.dispersion =
+      in_plane_dispersion(part.levels, Eigen::VectorXd::LinSpaced(k_points, 0, widest_k), progress);
   watch.lap(fmt::format("in-plane dispersion of the {}", name));
   if (study.model.ends == Ends::periodic) {
     part.minibands = minibands(part.levels, study.model.bloch_phases);

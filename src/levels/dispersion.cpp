@@ -66,7 +66,7 @@ class Band {
 
 }  // namespace
 
-Dispersion in_plane_dispersion(const Levels& levels, const Eigen::VectorXd& k) {
+Dispersion in_plane_dispersion(const Levels& levels, const Eigen::VectorXd& k, const Progress& progress) {
   Dispersion dispersion;
   dispersion.k = k;
   dispersion.energy.resize(levels.count(), k.size());
@@ -75,6 +75,8 @@ Dispersion in_plane_dispersion(const Levels& levels, const Eigen::VectorXd& k) {
   for (int i = 0; i < levels.count(); ++i) psi.col(i) = gather(grid, levels.envelope.col(i));
   Eigen::VectorXd energy = levels.energy;
   for (Eigen::Index c = 0; c < k.size(); ++c) {
+    if (progress && !progress(static_cast<double>(c) / static_cast<double>(k.size()), "in-plane dispersion"))
+      throw Stopped();
     const Hamiltonian hamiltonian(levels.profile, k[c]);
     Factors factors(hamiltonian);
     Rayleigh rayleigh(hamiltonian, factors);
