@@ -6,7 +6,8 @@ import sys
 
 import numpy as np
 
-from shooting import (K, Medium, aluminium_gallium_arsenide, electrons, heavy_holes, levels, miniband_edges)
+from shooting import (K, Medium, aluminium_gallium_arsenide, electrons, heavy_holes, levels, miniband_edges,
+                      mirrored_dipole)
 
 h = 4.135667696  # eV fs
 hc = 1239.841984  # eV nm
@@ -28,8 +29,9 @@ def infrared_absorber():
     for bands in ("two", "one"):
         b, w = electrons([0.3, 0.0], 300, bands)
         E = levels([(15, b), (7, w), (15, b)], 0, 2, step=1.0)
-        out |= {f"line, {bands}": E[1] - E[0], f"wavelength, {bands}": hc / (E[1] - E[0])}
-    out["strength of a deep well"] = 256 / (27 * np.pi**2) / 0.067
+        z = mirrored_dipole([(15, b), (7, w), (15, b)], E[0], E[1], step=0.02)
+        out |= {f"line, {bands}": E[1] - E[0], f"wavelength, {bands}": hc / (E[1] - E[0]),
+                f"strength, {bands}": z * z * (E[1] - E[0]) / K}
     return out
 
 

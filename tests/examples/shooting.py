@@ -106,6 +106,32 @@ def levels(layers, field=0.0, count=4, step=0.5):
     return fine + (fine - coarse) / 3
 
 
+def mirrored_dipole(layers, E1, E2, step):
+    """Dipole [nm] between two levels of a stack that is its own mirror image. psi and, where the mass grows with energy,
+    chi = sqrt(hbar^2 b / 2m0) psi' / (E - pole) are taken in the middles of the slices of the lower half, where carrying
+    them up from the wall loses no digits; an even number of slices is needed in the middle layer."""
+    parts = slices(layers, step)
+    middle = 0.5 * sum(thickness for thickness, _ in layers)
+    half = [part for part in parts if part[1] < middle]
+    states = []
+    for E in (E1, E2):
+        psi, flux, rows = 0.0, 1.0, []
+        for dz, _, medium in half:
+            inverse = medium.inverse_mass(E)
+            k2 = complex((E - medium.edge) / (K * inverse))
+            k = np.sqrt(k2)
+            c, s = np.cos(k * dz / 2), np.sin(k * dz / 2) / k
+            for where in ("middle", "end"):
+                psi, flux = (c * psi + s / inverse * flux).real, (-k2 * s * inverse * psi + c * flux).real
+                if where == "middle":
+                    valence = 0 if medium.gap is None else np.sqrt(K * medium.gap / medium.mass) / (E - medium.pole)
+                    rows.append((psi, valence * flux / inverse))
+        states.append(np.array(rows))
+    dz, z = np.array([part[0] for part in half]), np.array([part[1] for part in half]) - middle
+    norm = [2 * ((state**2).sum(axis=1) * dz).sum() for state in states]
+    return 2 * ((states[0] * states[1]).sum(axis=1) * z * dz).sum() / np.sqrt(norm[0] * norm[1])
+
+
 def miniband_edges(well, barrier, a, b, band):
     """Edges (phase 0, phase pi) of band 1, 2, ... of a superlattice with wells of width a and barriers of width b, where
     cos(phase) = cos(ka) cosh(qb) - (r - 1/r) / 2 sin(ka) sinh(qb), r = k m_b / (q m_w) (G. Bastard, Phys. Rev. B 24,
