@@ -17,14 +17,19 @@ constexpr double nearness = 0.25;  // of the levels' spread: how near the shift 
 
 }  // namespace
 
-double energy_below_level(Counter& counter, int first, int count, double floor) {
+int levels_below(Factors& factors, double E) {
+  factors.compute(E);
+  return factors.negative();
+}
+
+double energy_below_level(Factors& factors, int first, int count, double floor) {
   double low = floor, high = std::numeric_limits<double>::infinity(), top = floor;
-  int below_low = counter.below(floor);
+  int below_low = levels_below(factors, floor);
   for (double step = 0.1;; step *= 2) {
     if (step > furthest)
       throw NotConverged("no further level was found; the stack holds too few on this grid");
     top = floor + step;
-    const int below = counter.below(top);
+    const int below = levels_below(factors, top);
     if (below <= first) {
       low = top;
       below_low = below;
@@ -35,7 +40,7 @@ double energy_below_level(Counter& counter, int first, int count, double floor) 
   }
   while ((below_low < first || high - low > nearness * (top - low)) && high - low > finest) {
     const double middle = 0.5 * (low + high);
-    const int below = counter.below(middle);
+    const int below = levels_below(factors, middle);
     if (below <= first) {
       low = middle;
       below_low = below;
@@ -49,20 +54,19 @@ double energy_below_level(Counter& counter, int first, int count, double floor) 
 
 Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor,
                   double enough) {
-  Counter counter(factors);
-  const double shift = energy_below_level(counter, first, count, floor);
-  if (counter.below(shift) == first) {
+  const double shift = energy_below_level(factors, first, count, floor);
+  if (levels_below(factors, shift) == first) {
     Pairs pairs = lanczos(hamiltonian, factors, shift, count);
     Rayleigh rayleigh(hamiltonian, factors);
     if (pairs.count() == count && rayleigh.polish_all(pairs, enough)) {
       const double above = pairs.energy[count - 1] + std::max(1e-9, 4 * rayleigh.floor());
-      if (counter.below(above) == first + count) return pairs;
+      if (levels_below(factors, above) == first + count) return pairs;
       // The uppermost may be one of a group that goes on; what lies below it must be complete.
       for (int i = count - 1; i > 0; --i) {
         const double gap = pairs.energy[i] - pairs.energy[i - 1];
         if (gap < 1e-8) continue;
-        if (counter.below(pairs.energy[i - 1] + 0.5 * gap) == first + i &&
-            counter.below(pairs.energy[i] - 0.01 * gap) == first + i)
+        if (levels_below(factors, pairs.energy[i - 1] + 0.5 * gap) == first + i &&
+            levels_below(factors, pairs.energy[i] - 0.01 * gap) == first + i)
           return pairs;
         break;
       }
@@ -72,13 +76,12 @@ Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, i
 }
 
 Pairs bisection(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor) {
-  Counter counter(factors);
   const auto n = static_cast<std::size_t>(count);
   std::vector<double> low(n, floor), high(n, 0);
   double top = floor, step = 0.05;
   for (;; step *= 2) {
     top = floor + step;
-    if (counter.below(top) >= first + count) break;
+    if (levels_below(factors, top) >= first + count) break;
     if (step > furthest)
       throw NotConverged("no further level was found; the stack holds too few on this grid");
   }
@@ -87,7 +90,7 @@ Pairs bisection(const Hamiltonian& hamiltonian, Factors& factors, int first, int
     while (high[k] - low[k] > finest) {
       const double E = 0.5 * (low[k] + high[k]);
       if (E <= low[k] || E >= high[k]) break;
-      const int below = counter.below(E);
+      const int below = levels_below(factors, E);
       for (std::size_t i = k; i < n; ++i)
         if (below > first + static_cast<int>(i))
           high[i] = std::min(high[i], E);

@@ -51,22 +51,12 @@ class Rayleigh {
   double stagnation_;  // below this a residual that falls no more is rounding
 };
 
-/// Counts of levels below an energy, kept so that none is taken twice.
-class Counter {
- public:
-  explicit Counter(Factors& factors) : factors_(&factors) {}
-  int below(double E) {
-    factors_->compute(E);
-    return factors_->negative();
-  }
-
- private:
-  Factors* factors_;
-};
+/// Levels below E, one factorisation each; E lies above every pole.
+int levels_below(Factors& factors, double E);
 
 /// An energy with exactly `first` levels below it, near the `count` levels that follow as measured by their
 /// spread (except where levels coincide); `floor` has no more than `first` levels below it.
-double energy_below_level(Counter& counter, int first, int count, double floor);
+double energy_below_level(Factors& factors, int first, int count, double floor);
 
 /// The `count` levels from number `first` (0-based from the lowest) by shift-invert Lanczos, checked by
 /// counts; by bisection where Lanczos misses one. Residuals as in Rayleigh::polish. Throws NotConverged.

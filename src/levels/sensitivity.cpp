@@ -35,8 +35,7 @@ class Forms {
         grid_(levels.profile.grid),
         at_(levels.profile.at),
         slope_(slope_of(grid_, levels.envelope)),
-        derivatives_(study, levels.profile),
-        study_(study) {}
+        derivatives_(study, levels.profile) {}
 
   Products products(int i, int j) const {
     const Eigen::ArrayXd w = grid_.weight.array();
@@ -104,7 +103,6 @@ class Forms {
   }
 
   ProfileDerivatives& derivatives() { return derivatives_; }
-  const Study& study() const { return study_; }
 
  private:
   const Levels& levels_;
@@ -112,7 +110,6 @@ class Forms {
   const Coefficients& at_;
   Eigen::MatrixXd slope_;
   ProfileDerivatives derivatives_;
-  const Study& study_;
 };
 
 // The derivative with the composition that a layer's address means: its own, or of both ends of a grading

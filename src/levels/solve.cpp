@@ -66,14 +66,13 @@ class Solver {
     const Grid grid = make_grid(study_.stack.faces(), cuts_, degree);
     if (grid.rows() > most_rows) throw NotConverged("the grid that these levels need is too large");
     op_ = std::make_unique<Operator>(study_, carrier_, grid);
-    counter_ = std::make_unique<Counter>(op_->factors);
-    base_ = counter_->below(op_->floor.energy);
+    base_ = levels_below(op_->factors, op_->floor.energy);
     if (progress_ &&
         !progress_(std::min(0.9, 0.1 * (degree - first_degree) / degree_step + 0.2 * halvings_), "levels"))
       throw Stopped();
   }
 
-  int below(double E) { return counter_->below(E) - base_; }
+  int below(double E) { return levels_below(op_->factors, E) - base_; }
 
   Pairs cold(const Range& range) {
     return cold_levels(op_->hamiltonian, op_->factors, base_ + range.start(), range.total(),
@@ -83,19 +82,28 @@ class Solver {
   // Residual that does while the grid still changes: its square over the gaps is far below the accuracy.
   double enough() const { return std::min(1e-8, 1e-2 * study_.model.accuracy); }
 
+  // What the request comes to on this grid, groups uncut aside.
+  Range requested() {
+    if (request_.count) return {0, *request_.count};
+    const int bottom = request_.above ? below(std::max(*request_.above, op_->floor.energy)) : 0;
+    return {bottom, std::max(0, below(std::max(*request_.below, op_->floor.energy)) - bottom)};
+  }
+
   // Decides the range from the request and leaves its pairs in pairs_.
   void find_range() {
     if (!request_.in_layers.empty()) return find_range_in_layers();
-    if (request_.count) {
-      range_ = {0, *request_.count};
-    } else {
-      const int bottom = request_.above ? below(std::max(*request_.above, op_->floor.energy)) : 0;
-      range_ = {bottom, std::max(0, below(std::max(*request_.below, op_->floor.energy)) - bottom)};
-    }
+    range_ = asked_ = requested();
     if (range_.count > largest_level_count)
       throw NotConverged(fmt::format("{} levels lie in the window asked for; at most {} are computed",
                                      range_.count, largest_level_count));
+    solve_range();
+  }
+
+  void solve_range() {
     pairs_ = cold(range_);
+    extend();
+  }
+  void extend() {
     while (widened()) pairs_ = cold(range_);
   }
 
@@ -145,8 +153,7 @@ class Solver {
     const int wanted = request_.count.value_or(1);
     range_ = {below(std::max(lowest, op_->floor.energy)), 2 * wanted};
     for (;;) {
-      pairs_ = cold(range_);
-      while (widened()) pairs_ = cold(range_);
+      solve_range();
       int found = 0, last = 0;
       for (int i = 0; i < range_.count && found < wanted; ++i)
         if (share_in_layers(i + range_.lower()) > mostly) {
@@ -157,8 +164,7 @@ class Solver {
       const bool far = highest > op_->profile.at.edge.maxCoeff() + far_above;
       if (found == wanted || far || range_.count >= largest_level_count) {
         range_.count = found == 0 ? 0 : last + 1;
-        pairs_ = cold(range_);
-        while (widened()) pairs_ = cold(range_);
+        solve_range();
         return;
       }
       range_.count = std::min(2 * range_.count, largest_level_count);
@@ -169,10 +175,7 @@ class Solver {
   std::optional<Levels> climb() {
     std::vector<Eigen::VectorXd> history;
     for (int degree = first_degree; degree <= last_degree; degree += degree_step) {
-      if (degree == first_degree && halvings_ == 0) {  // solved by divide()
-      } else {
-        follow(degree);
-      }
+      if (degree > first_degree || halvings_ > 0) follow(degree);  // the first is solved by divide()
       history.push_back(pairs_.energy);
       if (history.size() < 3) continue;
       if (history[history.size() - 3].size() != pairs_.energy.size() ||
@@ -180,16 +183,20 @@ class Solver {
         continue;
       const Eigen::VectorXd estimate = estimate_of(history);
       if (!estimate.allFinite()) {
-        if (degree + degree_step > last_degree || settling(history)) return std::nullopt;
+        // Raising the degree no longer helps once the ratio stayed high twice.
+        if (degree + degree_step > last_degree || history.size() >= 4) return std::nullopt;
         continue;
       }
       const double noise = noise_of();
-      const double worst = estimate.segment(range_.lower(), range_.count).size() > 0
-                               ? estimate.segment(range_.lower(), range_.count).maxCoeff()
-                               : 0;
+      const double worst = range_.count > 0 ? estimate.segment(range_.lower(), range_.count).maxCoeff() : 0;
       if (worst <= std::max(study_.model.accuracy, 4 * noise)) {
         const Range before = range_;
-        if (!request_.count && request_.in_layers.empty()) find_range();  // the window on the final grid
+        if (!request_.count && request_.in_layers.empty()) {  // the window on the final grid
+          if (requested() == asked_)
+            extend();
+          else
+            find_range();
+        }
         if (!(range_ == before)) {
           history = {};
           continue;
@@ -205,9 +212,6 @@ class Solver {
     }
     return std::nullopt;
   }
-
-  // True where raising the degree no longer helps: the ratio stayed high twice.
-  static bool settling(const std::vector<Eigen::VectorXd>& history) { return history.size() >= 4; }
 
   double noise_of() const { return 8 * eps * op_->hamiltonian.rounding_norm(); }
 
@@ -339,10 +343,9 @@ class Solver {
   LevelRequest request_;
   std::vector<std::vector<double>> cuts_;
   std::unique_ptr<Operator> op_;
-  std::unique_ptr<Counter> counter_;
   Pairs pairs_;
-  Range range_;
-  int base_ = 0;  // levels below the floor: none, but for a broken gap
+  Range range_, asked_;  // asked_: before groups were kept whole
+  int base_ = 0;         // levels below the floor: none, but for a broken gap
   int halvings_ = 0, recoveries_ = 0;
   bool settled_ = false;
 };
@@ -355,7 +358,7 @@ Levels solve_levels(const Study& study, Carrier carrier, Notes& notes, const Pro
 
 Eigen::VectorXd energies_on_grid(const Study& study, Carrier carrier, const Grid& grid, int count) {
   Operator op(study, carrier, grid);
-  const int base = Counter(op.factors).below(op.floor.energy);
+  const int base = levels_below(op.factors, op.floor.energy);
   return cold_levels(op.hamiltonian, op.factors, base, count, op.floor.energy).energy;
 }
 

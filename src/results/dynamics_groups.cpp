@@ -44,7 +44,7 @@ void write_density(hdf5::Group& parent, const Levels& levels, const Dynamics& dy
 
 }  // namespace
 
-void write_dynamics(const hdf5::Group& root, const Study&, const Levels& levels, const Dynamics& dynamics) {
+void write_dynamics(const hdf5::Group& root, const Levels& levels, const Dynamics& dynamics) {
   hdf5::Group group = root.child("dynamics");
   group.attribute("captured_norm", dynamics.captured_norm);
   if (dynamics.classical_period) group.attribute("classical_period", *dynamics.classical_period);

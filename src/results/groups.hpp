@@ -9,9 +9,8 @@ namespace wellwright {
 
 void write_layers(const hdf5::Group& root, const Answer& answer);
 void write_profile(const hdf5::Group& root, const Answer& answer);
-void write_carrier(const hdf5::Group& root, const Study& study, const CarrierAnswer& part);
+void write_carrier(const hdf5::Group& root, const CarrierAnswer& part);
 void write_interband(const hdf5::Group& root, const Interband& pairs);
-void write_dynamics(const hdf5::Group& root, const Study& study, const Levels& levels,
-                    const Dynamics& dynamics);
+void write_dynamics(const hdf5::Group& root, const Levels& levels, const Dynamics& dynamics);
 
 }  // namespace wellwright

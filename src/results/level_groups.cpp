@@ -138,7 +138,7 @@ void write_transitions(const hdf5::Group& root, const CarrierAnswer& part) {
 
 }  // namespace
 
-void write_carrier(const hdf5::Group& root, const Study&, const CarrierAnswer& part) {
+void write_carrier(const hdf5::Group& root, const CarrierAnswer& part) {
   write_levels(root, part);
   write_dispersion(root, part);
   write_sensitivity(root, part);

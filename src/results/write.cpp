@@ -107,12 +107,11 @@ void write_all(hdf5::File& file, const Answer& answer) {
   root.attribute("default", "/" + (answer.dynamics ? std::string("dynamics") : group_of("levels", first)));
   write_layers(root, answer);
   write_profile(root, answer);
-  for (const CarrierAnswer& part : answer.carriers) write_carrier(root, answer.study, part);
+  for (const CarrierAnswer& part : answer.carriers) write_carrier(root, part);
   for (const Interband& pairs : answer.interband) write_interband(root, pairs);
   if (!answer.dynamics) return;
   const CarrierAnswer* electrons = answer.find(Carrier::electron);
-  write_dynamics(root, answer.study, electrons ? electrons->levels : answer.carriers.front().levels,
-                 *answer.dynamics);
+  write_dynamics(root, electrons ? electrons->levels : answer.carriers.front().levels, *answer.dynamics);
 }
 
 double bytes_of(const Answer& answer) {

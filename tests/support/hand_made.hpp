@@ -52,4 +52,15 @@ inline wellwright::Study double_well(wellwright::Bands bands, double field = 0.0
   return study({{barrier, 20}, {well, 14.5}, {barrier, 2.5}, {well, 10}, {barrier, 20}}, bands, field);
 }
 
+/// The study with a start for its dynamics.
+inline wellwright::Study with_start(wellwright::Study study, const wellwright::Start& start, double duration,
+                                    int samples) {
+  wellwright::DynamicsRequest request;
+  request.start = start;
+  request.duration = duration;
+  request.samples = samples;
+  study.dynamics = request;
+  return study;
+}
+
 }  // namespace hand_made

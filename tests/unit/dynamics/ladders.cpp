@@ -6,30 +6,22 @@
 #include <cstdio>
 #include <string>
 
-#include "support/hand_made.hpp"
+#include "support/hand_made_levels.hpp"
 #include "wellwright/dynamics.hpp"
 
 using namespace wellwright;
 using hand_made::barrier;
+using hand_made::solve;
 using hand_made::well;
 
 namespace {
 
 constexpr double pi = 3.14159265358979323846;
 
-Dynamics run(Study study, const Levels& levels, const Start& start, double duration, int samples) {
-  DynamicsRequest request;
-  request.start = start;
-  request.duration = duration;
-  request.samples = samples;
-  study.dynamics = request;
+Dynamics run(const Study& study, const Levels& levels, const Start& start, double duration, int samples) {
   Notes notes;
-  return superpose(study, levels, transitions(levels), nullptr, notes);
-}
-
-Levels solve(const Study& study) {
-  Notes notes;
-  return solve_levels(study, Carrier::electron, notes, {});
+  return superpose(hand_made::with_start(study, start, duration, samples), levels, transitions(levels),
+                   nullptr, notes);
 }
 
 }  // namespace

@@ -3,28 +3,19 @@
 #include <catch2/catch.hpp>
 #include <cmath>
 
-#include "support/hand_made.hpp"
+#include "support/hand_made_levels.hpp"
 #include "wellwright/dynamics.hpp"
 
 using namespace wellwright;
 using hand_made::barrier;
+using hand_made::solve;
 using hand_made::well;
 
 namespace {
 
-Levels solve(const Study& study, Carrier carrier = Carrier::electron) {
+Dynamics run(const Study& study, const Start& start, const Levels& levels, const Levels* holes = nullptr) {
   Notes notes;
-  return solve_levels(study, carrier, notes, {});
-}
-
-Dynamics run(Study study, const Start& start, const Levels& levels, const Levels* holes = nullptr) {
-  DynamicsRequest request;
-  request.start = start;
-  request.samples = 11;
-  request.duration = 1;
-  study.dynamics = request;
-  Notes notes;
-  return superpose(study, levels, transitions(levels), holes, notes);
+  return superpose(hand_made::with_start(study, start, 1, 11), levels, transitions(levels), holes, notes);
 }
 
 std::string trouble(const Study& study, const Start& start, const Levels& levels) {

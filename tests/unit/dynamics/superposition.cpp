@@ -17,12 +17,8 @@ struct Run {
   Dynamics dynamics;
 };
 
-Run run(Study study, const Start& start, double duration, int samples) {
-  DynamicsRequest request;
-  request.start = start;
-  request.duration = duration;
-  request.samples = samples;
-  study.dynamics = request;
+Run run(const Study& base, const Start& start, double duration, int samples) {
+  const Study study = hand_made::with_start(base, start, duration, samples);
   Notes notes;
   Run out;
   out.levels = solve_levels(study, Carrier::electron, notes, {});

@@ -3,21 +3,13 @@
 #include <catch2/catch.hpp>
 #include <cmath>
 
-#include "support/hand_made.hpp"
+#include "support/hand_made_levels.hpp"
 #include "wellwright/levels.hpp"
 
 using namespace wellwright;
 using hand_made::barrier;
+using hand_made::solve;
 using hand_made::well;
-
-namespace {
-
-Levels solve(const Study& study, Carrier carrier = Carrier::electron) {
-  Notes notes;
-  return solve_levels(study, carrier, notes, {});
-}
-
-}  // namespace
 
 TEST_CASE(
     "A hard-wall well has E_n = n^2 pi^2 hbar^2 / 2 m L^2, <z> in the middle and the closed-form spread") {

@@ -3,21 +3,13 @@
 #include <catch2/catch.hpp>
 #include <cmath>
 
-#include "support/hand_made.hpp"
+#include "support/hand_made_levels.hpp"
 #include "wellwright/optics.hpp"
 
 using namespace wellwright;
 using hand_made::barrier;
+using hand_made::solve;
 using hand_made::well;
-
-namespace {
-
-Levels solve(const Study& study, Carrier carrier = Carrier::electron) {
-  Notes notes;
-  return solve_levels(study, carrier, notes, {});
-}
-
-}  // namespace
 
 TEST_CASE("Units and signs of a table of transitions") {
   // 20 nm between hard walls, m = 0.067: E1 = 14.03098 meV, E2 - E1 = 3 E1, |z12| = 16 L / 9 pi^2 and
