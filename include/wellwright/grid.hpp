@@ -45,6 +45,10 @@ Eigen::MatrixXd slope_of(const Grid& grid, const Eigen::MatrixXd& local);
 /// or `to` refines `from` in degree or elements. Columns are functions.
 Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values, const Grid& to);
 
+/// Values at the global nodes (each element boundary once) of the same elements with another degree. Columns
+/// are functions.
+Eigen::MatrixXd raise_degree(const Grid& from, const Eigen::MatrixXd& nodal, int degree);
+
 /// Values at arbitrary increasing points z [nm]; row: point, column: function.
 Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values,
                             const std::vector<double>& points);

@@ -4,11 +4,13 @@
 #pragma once
 
 #include <Eigen/Core>
-#include <vector>
+#include <memory>
 
 #include "wellwright/profile.hpp"
 
 namespace wellwright {
+
+struct Packs;  // private to the room
 
 /// T(E) = hbar^2/2m0 D' [1/m(E, z)] D + U - E in weak form, with in-plane momentum k. The unknowns are the
 /// values of psi at the global nodes 0..N (hard ends: nodes 0 and N are zero; periodic ends: psi_N = exp(i
@@ -32,22 +34,22 @@ class Hamiltonian {
   double lowest_edge() const { return lowest_edge_; }
   double highest_edge() const { return highest_edge_; }
 
-  /// Coefficients of element `e` at energy E: `stiffness` hbar^2/2m0 /m, `potential` U + k terms - E, and
-  /// their derivatives in E with the sign turned (both positive), at its nodes.
-  void element_coefficients(int element, double E, double* stiffness, double* potential, double* d_stiffness,
-                            double* d_potential) const;
-
   /// y = T(E) x and, when `slope` is given, slope = -T'(E) x; vectors over global nodes.
   void apply(double E, const Eigen::VectorXd& x, Eigen::VectorXd& y, Eigen::VectorXd* slope = nullptr) const;
+  /// out = -T'(E) x alone.
+  void slope(double E, const Eigen::VectorXd& x, Eigen::VectorXd& out) const;
+
+  /// The elements as the room's arithmetic takes them.
+  const Packs& packs() const { return *packs_; }
 
  private:
+  void hold_ends(Eigen::VectorXd& y) const;
+
   const Profile* profile_;
   double k_;
+  std::shared_ptr<const Packs> packs_;
   double highest_pole_, norm_, rounding_norm_, lowest_edge_, highest_edge_;
 };
-
-/// The same number of four neighbouring elements: the arithmetic of all elements runs in packs of four.
-using Lanes = Eigen::Array4d;
 
 /// LDL' factors of T(E): the inner nodes of each element are eliminated, four elements at a time, then the
 /// chain of element boundaries, so that the work and the memory are linear in the elements. Reused for many
@@ -55,6 +57,7 @@ using Lanes = Eigen::Array4d;
 class Factors {
  public:
   explicit Factors(const Hamiltonian& hamiltonian);
+  ~Factors();
   /// Factors T(E) for Bloch phase with this cosine (periodic ends; 1 is phase 0).
   void compute(double E, double cos_phase = 1);
   /// Negative pivots: the levels below E when E is above every pole (Sylvester's law of inertia).
@@ -70,28 +73,17 @@ class Factors {
   int inner_negative() const { return inner_negative_; }
 
  private:
-  struct Face {
-    double left_left = 0, left_right = 0, right_right = 0;  // an element condensed to its boundaries
-  };
-  void pack_matrix(int pack, double E);
-  void eliminate_inner(int pack);
+  struct Parts;
   void eliminate_chain(double cos_phase);
 
   const Hamiltonian* h_;
-  int p_, elements_, packs_;
+  int p_, elements_;
   bool periodic_;
   double tiny_;
   int negative_ = 0, inner_negative_ = 0;
-  double face_[3] = {0, 0, 0};    // S00, S0N, SNN
-  double last_ = 0;               // pivot of the identified face node
-  std::vector<int> order_;        // local nodes: the inner ones, then left, right
-  std::vector<int> column_;       // where column j of the packed lower triangle starts
-  std::vector<double> products_;  // w_q D_qi D_qj of the reference element, packed within q
-  std::vector<double> uniform_;   // the same summed over q, for constant mass
-  std::vector<Lanes> matrix_;     // of the present pack, packed lower triangle
-  std::vector<Lanes> factor_;     // per pack and inner node: 1 / pivot, then the column of the unit factor
-  std::vector<Face> condensed_;   // per element
-  std::vector<double> pivot_, step_, border_;  // per chain node: pivot, coupling upward and to node 0 over it
+  double face_[3] = {0, 0, 0};  // S00, S0N, SNN
+  double last_ = 0;             // pivot of the identified face node
+  std::unique_ptr<Parts> parts_;
 };
 
 /// From element-local to global nodes and back.

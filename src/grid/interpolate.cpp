@@ -1,7 +1,9 @@
 // SPDX-License-Identifier: Apache-2.0
 // Barycentric Lagrange interpolation inside elements.
 #include <algorithm>
+#include <array>
 #include <cmath>
+#include <mutex>
 
 #include "wellwright/grid.hpp"
 
@@ -30,6 +32,28 @@ void interpolation_row(const Eigen::VectorXd& nodes, const Eigen::VectorXd& w, d
     row[i] = w[i] / (x - nodes[i]);
   }
   row /= row.sum();
+}
+
+Eigen::MatrixXd make_between_degrees(int from, int to) {
+  const ReferenceElement &here = reference_element(from), &there = reference_element(to);
+  const Eigen::VectorXd w = barycentric_weights(here.nodes);
+  Eigen::MatrixXd matrix(to + 1, from + 1);
+  Eigen::VectorXd row(from + 1);
+  for (int i = 0; i <= to; ++i) {
+    interpolation_row(here.nodes, w, there.nodes[i], row);
+    matrix.row(i) = row.transpose();
+  }
+  return matrix;
+}
+
+// Values at the nodes of degree `to` from those at the nodes of degree `from`; each matrix is made once.
+const Eigen::MatrixXd& between_degrees(int from, int to) {
+  constexpr std::size_t degrees = highest_degree + 1;
+  static std::array<Eigen::MatrixXd, degrees * degrees> all;
+  static std::array<std::once_flag, degrees * degrees> made;
+  const std::size_t at = static_cast<std::size_t>(from) * degrees + static_cast<std::size_t>(to);
+  std::call_once(made[at], [&] { all[at] = make_between_degrees(from, to); });
+  return all[at];
 }
 
 int element_at(const Grid& grid, double z) {
@@ -66,17 +90,10 @@ class Interpolator {
 Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values, const Grid& to) {
   Eigen::MatrixXd out(to.rows(), values.cols());
   if (from.boundaries == to.boundaries) {  // another degree on the same elements: one small matrix for all
-    const ReferenceElement &here = reference_element(from.degree), &there = reference_element(to.degree);
-    const Eigen::VectorXd w = barycentric_weights(here.nodes);
-    Eigen::MatrixXd matrix(to.degree + 1, from.degree + 1);
-    Eigen::VectorXd row(from.degree + 1);
-    for (int i = 0; i <= to.degree; ++i) {
-      interpolation_row(here.nodes, w, there.nodes[i], row);
-      matrix.row(i) = row.transpose();
-    }
+    const Eigen::MatrixXd& matrix = between_degrees(from.degree, to.degree);
     for (int e = 0; e < to.elements(); ++e)
-      out.middleRows(e * (to.degree + 1), to.degree + 1).noalias() =
-          matrix * values.middleRows(e * (from.degree + 1), from.degree + 1);
+      out.middleRows(e * (to.degree + 1), to.degree + 1) =
+          matrix.lazyProduct(values.middleRows(e * (from.degree + 1), from.degree + 1));
     return out;
   }
   Interpolator interpolator(from, values);
@@ -100,6 +117,22 @@ Eigen::MatrixXd interpolate(const Grid& from, const Eigen::MatrixXd& values,
   Interpolator interpolator(from, values);
   for (std::size_t i = 0; i < points.size(); ++i)
     interpolator.at(element_at(from, points[i]), points[i], out.row(static_cast<Eigen::Index>(i)));
+  return out;
+}
+
+Eigen::MatrixXd raise_degree(const Grid& from, const Eigen::MatrixXd& nodal, int degree) {
+  const Eigen::MatrixXd& matrix = between_degrees(from.degree, degree);
+  const int elements = from.elements();
+  Eigen::MatrixXd out(elements * degree + 1, nodal.cols());
+  for (Eigen::Index column = 0; column < nodal.cols(); ++column) {
+    // Columns of these matrices are elements; those on the right share their boundaries.
+    using Strided = Eigen::OuterStride<>;
+    const Eigen::Map<const Eigen::MatrixXd, 0, Strided> x(&nodal(0, column), from.degree + 1, elements,
+                                                          Strided(from.degree));
+    Eigen::Map<Eigen::MatrixXd, 0, Strided> y(&out(0, column), degree, elements, Strided(degree));
+    y.noalias() = matrix.topRows(degree) * x;
+    out(elements * degree, column) = nodal(elements * from.degree, column);
+  }
   return out;
 }
 

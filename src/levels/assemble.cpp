@@ -12,6 +12,7 @@ namespace {
 constexpr double group_width = 1e-10;    // [eV]
 constexpr double extremum_share = 0.05;  // of the largest, for the sign
 constexpr double fine_overlap = 1e-14;   // deviation from orthonormality that is left alone
+constexpr double small_overlap = 1e-9;   // whose square is nothing
 
 // <i|g|j> over all components with weights w g.
 Eigen::MatrixXd weighted_product(const Levels& levels, const Eigen::VectorXd& w) {
@@ -34,7 +35,11 @@ void transform(Levels& levels, Eigen::Index first, const Eigen::MatrixXd& by) {
 void orthonormalise(Levels& levels) {
   const Eigen::MatrixXd gram = weighted_product(levels, levels.profile.grid.weight);
   const auto n = gram.rows();
-  if ((gram - Eigen::MatrixXd::Identity(n, n)).cwiseAbs().maxCoeff() < fine_overlap) return;
+  const Eigen::MatrixXd unit = Eigen::MatrixXd::Identity(n, n);
+  const double deviation = (gram - unit).cwiseAbs().maxCoeff();
+  if (deviation < fine_overlap) return;
+  if (static_cast<double>(n) * deviation < small_overlap)
+    return transform(levels, 0, 1.5 * unit - 0.5 * gram);
   const Eigen::SelfAdjointEigenSolver<Eigen::MatrixXd> solver(gram);
   transform(levels, 0, solver.operatorInverseSqrt());
 }

@@ -54,6 +54,9 @@ double energy_below_level(Factors& factors, int first, int count, double floor) 
 
 Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor,
                   double enough) {
+  if (Pairs pairs = isolated_levels(hamiltonian, factors, first, count, floor, enough);
+      pairs.count() == count)
+    return pairs;
   const double shift = energy_below_level(factors, first, count, floor);
   if (levels_below(factors, shift) == first) {
     Pairs pairs = lanczos(hamiltonian, factors, shift, count);

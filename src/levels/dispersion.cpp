@@ -85,7 +85,7 @@ Dispersion in_plane_dispersion(const Levels& levels, const Eigen::VectorXd& k, c
     for (int i = 0; i < levels.count(); ++i) {
       double residual = 0;
       energy[i] += constants::hbar2_over_2m0 * (k[c] * k[c] - last * last) / levels.in_plane_mass[i];
-      if (!rayleigh.polish(energy[i], psi.col(i), residual, enough))
+      if (!rayleigh.improve(energy[i], psi.col(i), residual, enough))
         throw NotConverged("the energies at in-plane momentum do not converge");
     }
     dispersion.energy.col(c) = energy;

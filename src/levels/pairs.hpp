@@ -29,14 +29,17 @@ Eigen::VectorXd lumped_mass(const Hamiltonian& hamiltonian);
 class Rayleigh {
  public:
   Rayleigh(const Hamiltonian& hamiltonian, Factors& factors);
-  /// Improves one pair in place until its residual is `enough` [eV], or rounding; returns false when it does
-  /// not converge. The energy is then good to residual^2 over the distance to the next level.
-  bool polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual, double enough = 0);
-  /// The same for a cluster of levels within about cluster_width: block inverse iteration and Rayleigh-Ritz.
+  /// Improves one pair in place until its residual, as the factors give it, is `enough` [eV], which is above
+  /// floor(). The energy is then good to residual^2 over the distance to the next level. False when it does
+  /// not converge.
+  bool improve(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual, double enough);
+  /// The same to rounding, with the residual of T(E) applied.
+  bool polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual);
+  /// Polishes a cluster of levels within about cluster_width: block inverse iteration and Rayleigh-Ritz.
   bool polish_block(Eigen::Ref<Eigen::VectorXd> energy, Eigen::Ref<Eigen::MatrixXd> psi,
                     Eigen::Ref<Eigen::VectorXd> residual);
-  /// Sorts the pairs and polishes all of them, clusters as blocks. False when a pair does not converge or two
-  /// pairs fall on one level.
+  /// Sorts the pairs and polishes all of them, or improves them where `enough` does, clusters as blocks.
+  /// False when a pair does not converge or two pairs fall on one level.
   bool polish_all(Pairs& pairs, double enough = 0);
   /// Residual that counts as converged [eV].
   double floor() const { return floor_; }
@@ -46,7 +49,8 @@ class Rayleigh {
 
   const Hamiltonian* h_;
   Factors* factors_;
-  Eigen::VectorXd mass_, x_, y_, slope_;
+  Eigen::VectorXd mass_, inverse_mass_;  // lumped; 0 where the ends hold a node
+  Eigen::VectorXd x_, y_, slope_;
   double floor_;
   double stagnation_;  // below this a residual that falls no more is rounding
 };
@@ -62,6 +66,11 @@ double energy_below_level(Factors& factors, int first, int count, double floor);
 /// counts; by bisection where Lanczos misses one. Residuals as in Rayleigh::polish. Throws NotConverged.
 Pairs cold_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor,
                   double enough = 0);
+
+/// Levels `first` .. `first + count - 1` by counts and inverse iteration; none when two of them lie too close
+/// to be parted. Throws NotConverged when there are not so many.
+Pairs isolated_levels(const Hamiltonian& hamiltonian, Factors& factors, int first, int count, double floor,
+                      double enough);
 
 /// Shift-invert Lanczos on (psi, chi): the `count` levels just above `shift`; fewer when it did not converge.
 Pairs lanczos(const Hamiltonian& hamiltonian, Factors& factors, double shift, int count);

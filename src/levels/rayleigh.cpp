@@ -17,6 +17,7 @@ namespace wellwright {
 namespace {
 
 constexpr int most_steps = 12;
+constexpr double small_step = 1e-5;  // [eV] of one Newton step, whose square over an electronvolt is nothing
 constexpr double eps = std::numeric_limits<double>::epsilon();
 
 }  // namespace
@@ -39,6 +40,7 @@ Rayleigh::Rayleigh(const Hamiltonian& hamiltonian, Factors& factors)
     : h_(&hamiltonian),
       factors_(&factors),
       mass_(lumped_mass(hamiltonian)),
+      inverse_mass_((mass_.array() > 0).select(mass_.cwiseInverse(), 0)),
       x_(hamiltonian.nodes()),
       y_(hamiltonian.nodes()),
       slope_(hamiltonian.nodes()),
@@ -46,14 +48,34 @@ Rayleigh::Rayleigh(const Hamiltonian& hamiltonian, Factors& factors)
       stagnation_(1e4 * eps * hamiltonian.norm()) {}
 
 double Rayleigh::norm_of(const Eigen::VectorXd& residual) const {
-  double sum = 0;
-  for (Eigen::Index i = 0; i < residual.size(); ++i)
-    if (mass_[i] > 0) sum += residual[i] * residual[i] / mass_[i];
-  return std::sqrt(sum);
+  return std::sqrt(residual.cwiseAbs2().dot(inverse_mass_));
 }
 
-bool Rayleigh::polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual, double enough) {
-  const double goal = std::max(floor_, enough);
+bool Rayleigh::improve(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual, double enough) {
+  x_ = psi;
+  h_->slope(energy, x_, slope_);
+  for (int step = 0; step < most_steps; ++step) {
+    factors_->compute(energy);
+    x_ = slope_;
+    factors_->solve(x_);
+    h_->slope(energy, x_, y_);
+    const double norm = x_.dot(y_);
+    if (!(norm > 0)) return false;
+    const double change = x_.dot(slope_) / norm;  // x'T(E)x over -x'T'(E)x
+    energy += change;
+    slope_ -= change * y_;  // T(E + change) x
+    const double scale = 1 / std::sqrt(norm);
+    residual = scale * norm_of(slope_);
+    if (residual <= enough && (h_->poles() == 0 || std::abs(change) < small_step)) {
+      psi = scale * x_;
+      return std::isfinite(energy);
+    }
+    slope_ = scale * y_;
+  }
+  return false;
+}
+
+bool Rayleigh::polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& residual) {
   double last = std::numeric_limits<double>::infinity();
   x_ = psi;
   for (int step = 0; step < most_steps; ++step) {
@@ -69,7 +91,7 @@ bool Rayleigh::polish(double& energy, Eigen::Ref<Eigen::VectorXd> psi, double& r
     const double scale = 1 / std::sqrt(norm);
     y_ -= change * slope_;
     residual = scale * norm_of(y_);
-    if (residual <= goal || (step > 1 && residual > 0.3 * last && residual < stagnation_)) {
+    if (residual <= floor_ || (step > 1 && residual > 0.3 * last && residual < stagnation_)) {
       psi = scale * x_;
       return std::isfinite(energy);
     }
@@ -156,9 +178,11 @@ bool Rayleigh::polish_all(Pairs& pairs, double enough) {
     int end = i + 1;
     while (end < n && pairs.energy[end] - pairs.energy[end - 1] < cluster_width) ++end;
     const int m = end - i;
-    const bool fine = m == 1 ? polish(pairs.energy[i], pairs.psi.col(i), pairs.residual[i], enough)
-                             : polish_block(pairs.energy.segment(i, m), pairs.psi.middleCols(i, m),
-                                            pairs.residual.segment(i, m));
+    const bool fine = m > 1 ? polish_block(pairs.energy.segment(i, m), pairs.psi.middleCols(i, m),
+                                           pairs.residual.segment(i, m))
+                      : enough > floor_
+                          ? improve(pairs.energy[i], pairs.psi.col(i), pairs.residual[i], enough)
+                          : polish(pairs.energy[i], pairs.psi.col(i), pairs.residual[i]);
     if (!fine) return false;
     i = end;
   }

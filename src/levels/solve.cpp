@@ -12,7 +12,7 @@
 namespace wellwright {
 namespace {
 
-constexpr int first_degree = 6, last_degree = 20, degree_step = 2;
+constexpr int first_degree = 5, last_degree = 19, degree_step = 2;
 constexpr int most_halvings = 6;
 constexpr int most_rows = 4'000'000;
 constexpr double slow = 0.5;       // ratio of differences above which elements are halved instead
@@ -39,7 +39,7 @@ class Solver {
   Levels run() {
     divide();
     for (halvings_ = 0;; ++halvings_) {
-      if (const auto done = climb()) return *done;
+      if (auto done = climb()) return std::move(*done);
       if (halvings_ == most_halvings)
         throw NotConverged(fmt::format("the levels of the {} do not settle to {:.3g} eV on the finest grid",
                                        name_of(carrier_), study_.model.accuracy));
@@ -66,7 +66,7 @@ class Solver {
     const Grid grid = make_grid(study_.stack.faces(), cuts_, degree);
     if (grid.rows() > most_rows) throw NotConverged("the grid that these levels need is too large");
     op_ = std::make_unique<Operator>(study_, carrier_, grid);
-    base_ = levels_below(op_->factors, op_->floor.energy);
+    base_ = op_->floor.broken_gap ? levels_below(op_->factors, op_->floor.energy) : 0;
     if (progress_ &&
         !progress_(std::min(0.9, 0.1 * (degree - first_degree) / degree_step + 0.2 * halvings_), "levels"))
       throw Stopped();
@@ -242,13 +242,8 @@ class Solver {
     const Grid old_grid = op_->profile.grid;
     build(degree);
     if (previous.count() == range_.total()) {
-      Eigen::MatrixXd local(old_grid.rows(), previous.count());
-      for (int i = 0; i < previous.count(); ++i) local.col(i) = scatter(old_grid, previous.psi.col(i));
-      const Eigen::MatrixXd carried = interpolate(old_grid, local, op_->profile.grid);
       pairs_.energy = previous.energy;
-      pairs_.psi.resize(op_->hamiltonian.nodes(), previous.count());
-      for (int i = 0; i < previous.count(); ++i)
-        pairs_.psi.col(i) = gather(op_->profile.grid, carried.col(i));
+      pairs_.psi = raise_degree(old_grid, previous.psi, degree);
       Rayleigh rayleigh(op_->hamiltonian, op_->factors);
       if (rayleigh.polish_all(pairs_, enough())) return;  // counted at the end
     }

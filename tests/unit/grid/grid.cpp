@@ -66,3 +66,22 @@ TEST_CASE("Interpolation between grids keeps polynomials and jumps at element bo
   CHECK(points(2, 0) == Approx(f(3.001, 1)).margin(1e-12));
   CHECK(points(3, 0) == Approx(f(7.9, 1)).margin(1e-12));
 }
+
+TEST_CASE("A polynomial of the lower degree is kept when the degree rises") {
+  const Grid low = make_grid({0, 3, 8}, {{0.4}, {0.25}}, 5), high = make_grid({0, 3, 8}, {{0.4}, {0.25}}, 8);
+  const auto nodes = [](const Grid& grid) {
+    Eigen::VectorXd z(grid.elements() * grid.degree + 1);
+    for (int e = 0; e < grid.elements(); ++e)
+      z.segment(e * grid.degree, grid.degree + 1) = grid.z.segment(e * (grid.degree + 1), grid.degree + 1);
+    return z;
+  };
+  const auto values = [](const Eigen::VectorXd& z) {
+    Eigen::MatrixXd f(z.size(), 2);
+    f.col(0) = (0.3 * z.array() - 1).pow(5);
+    f.col(1) = z.array().square() - 4 * z.array();
+    return f;
+  };
+  const Eigen::MatrixXd raised = raise_degree(low, values(nodes(low)), 8);
+  REQUIRE(raised.rows() == nodes(high).size());
+  CHECK((raised - values(nodes(high))).cwiseAbs().maxCoeff() < 1e-13);
+}

@@ -77,6 +77,9 @@ TEST_CASE("T(E) applied, solved and counted agrees with a dense matrix") {
           const Eigen::VectorXd inner = x.segment(first, m);
           CHECK((y.segment(first, m) - T * inner).norm() < 1e-11 * (T * inner).norm());
           CHECK((s.segment(first, m) - slope * inner).norm() < 1e-5 * (slope * inner).norm());
+          Eigen::VectorXd alone;
+          h.slope(E, x, alone);
+          CHECK((alone - s).norm() <= 1e-15 * s.norm());
           factors.compute(E);
           CHECK(factors.negative() == negatives(T));
           Eigen::VectorXd load = Eigen::VectorXd::Zero(N + 1);

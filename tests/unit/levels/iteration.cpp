@@ -44,6 +44,33 @@ TEST_CASE("Lanczos and bisection by counts find the same levels") {
     }
 }
 
+TEST_CASE("Counts part the levels, and those too close to part are left to others") {
+  for (const Bands bands : {Bands::one, Bands::two, Bands::three})
+    for (const Ends ends : {Ends::hard, Ends::periodic}) {
+      Study study = hand_made::double_well(bands, ends == Ends::hard ? 0.001 : 0);
+      study.model.ends = ends;
+      const Grid grid = make_grid(study.stack.faces(), first_cuts(study, Carrier::electron, 0.3), 9);
+      Operator op(study, Carrier::electron, grid);
+      const Pairs all = bisection(op.hamiltonian, op.factors, 0, 7, op.floor.energy);
+      for (const int first : {0, 2, 4}) {
+        const Pairs some = isolated_levels(op.hamiltonian, op.factors, first, 3, op.floor.energy, 1e-9);
+        CAPTURE(static_cast<int>(bands), first);
+        REQUIRE(some.count() == 3);
+        CHECK((some.energy - all.energy.segment(first, 3)).cwiseAbs().maxCoeff() < 1e-11);
+        CHECK(some.residual.maxCoeff() <= 1e-9);
+      }
+    }
+  using hand_made::barrier, hand_made::well;
+  const Study twins =
+      hand_made::study({{barrier, 60}, {well, 8}, {barrier, 60}, {well, 8}, {barrier, 60}}, Bands::two);
+  Operator op(twins, Carrier::electron,
+              make_grid(twins.stack.faces(), first_cuts(twins, Carrier::electron, 0.3), 9));
+  CHECK(isolated_levels(op.hamiltonian, op.factors, 0, 2, op.floor.energy, 1e-9).count() == 0);
+  const Pairs both = cold_levels(op.hamiltonian, op.factors, 0, 2, op.floor.energy);
+  REQUIRE(both.count() == 2);
+  CHECK(both.energy[1] - both.energy[0] < 1e-10);
+}
+
 TEST_CASE("Bisection separates levels that coincide to rounding") {
   using hand_made::barrier, hand_made::well;
   const Study study = hand_made::study(
@@ -72,7 +99,8 @@ TEST_CASE("A warm solve does not allocate") {
     for (Eigen::Index i = 1; i < pairs.psi.rows() - 1; ++i)
       pairs.psi(i, 1) *= 1 + 1e-3 * static_cast<double>(i % 3);
     const long before = allocations;
-    const bool fine = rayleigh.polish(pairs.energy[1], pairs.psi.col(1), pairs.residual[1]);
+    const bool fine = rayleigh.improve(pairs.energy[1], pairs.psi.col(1), pairs.residual[1], 1e-9) &&
+                      rayleigh.polish(pairs.energy[1], pairs.psi.col(1), pairs.residual[1]);
     const int below = levels_below(op.factors, 0.5 * (pairs.energy[1] + pairs.energy[2]));
     const long after = allocations;
     CHECK(fine);
