@@ -21,6 +21,15 @@ struct Coefficients {
   int poles() const { return static_cast<int>(b.cols()); }
 };
 
+/// Potential energy of an electron in the field of the stack's own charge and polarization, a polynomial on
+/// each element.
+struct Potential {
+  Grid grid;               ///< its boundaries hold every layer face
+  Eigen::VectorXd energy;  ///< element-local nodes [eV]: -e phi, applied field aside; shifts all bands
+  Eigen::VectorXd exchange_correlation;  ///< [eV], of electrons only; empty: none
+  bool empty() const { return energy.size() == 0; }
+};
+
 /// The profile of one carrier on one grid.
 struct Profile {
   Grid grid;
@@ -64,9 +73,9 @@ class ProfileDerivatives {
 };
 
 /// First division of the layers into elements, as cuts for make_grid, for levels up to `top` [eV] in the
-/// carrier's own energy: an element spans about five radians or seven decay lengths. Elements shrink by 1/5 towards
-/// a face at which a grading is not analytic, and are no longer than two smearing lengths near a smeared
-/// interface.
+/// carrier's own energy: an element spans about five radians or seven decay lengths. Elements shrink by 1/5
+/// towards a face at which a grading is not analytic, and are no longer than two smearing lengths near a
+/// smeared interface.
 std::vector<std::vector<double>> first_cuts(const Study& study, Carrier carrier, double top);
 /// An energy below which about `count` levels lie, by counting half waves [eV].
 double guessed_top(const Study& study, Carrier carrier, int count);

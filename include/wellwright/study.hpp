@@ -27,6 +27,13 @@ struct LevelRequest {
   std::vector<int> in_layers;          ///< 0-based; with `count`
 };
 
+enum class Filling { equilibrium, per_module };
+
+/// What one outer face does to the potential.
+struct FaceCondition {
+  std::optional<double> pinned;  ///< conduction edge minus Fermi level at the face [eV]; absent: flat
+};
+
 struct Model {
   std::vector<Carrier> carriers{Carrier::electron};
   Bands bands = Bands::two;
@@ -35,6 +42,26 @@ struct Model {
   std::vector<std::pair<int, int>> transitions;  ///< counted from 1; empty: all pairs of the lowest four
   int bloch_phases = 51;
   double accuracy = 1e-6;  ///< [eV]
+  Filling filling = Filling::equilibrium;
+  bool self_consistent = false;       ///< the field of the stack's own charge
+  FaceCondition bottom, top;          ///< only with `self_consistent`
+  bool exchange_correlation = false;  ///< Hedin and Lundqvist, only with `self_consistent`
+  bool polarization = true;           ///< of wurtzite layers
+};
+
+enum class LineShape { lorentzian, gaussian, voigt };
+
+/// The absorption block.
+struct AbsorptionRequest {
+  double from = 0, to = 0;  ///< photon energy [eV]
+  int points = 0;
+  double full_width = 0;  ///< Lorentzian part, or of the Gaussian when that is the shape [eV]
+  LineShape shape = LineShape::lorentzian;
+  double gaussian_width = 0;          ///< full width of the Gaussian part of a Voigt line [eV]
+  double angle = 0.7853981633974483;  ///< internal, to the growth axis [rad]
+  int passes = 1;
+  bool collective = true;  ///< depolarization
+  Place place;
 };
 
 /// Starts of the dynamics, one struct each.
@@ -78,10 +105,12 @@ struct Study {
   std::string file;
   std::vector<std::string> settings;  ///< the --set list
   Stack stack;
-  double field = 0;  ///< F along +z [V/nm]
+  double carrier_temperature = 300;  ///< [K]
+  double field = 0;                  ///< F along +z [V/nm]
   std::optional<double>
       bias;  ///< when given: potential of the top minus the bottom [V], and field = -bias / length
   Model model;
+  std::optional<AbsorptionRequest> absorption;
   std::optional<DynamicsRequest> dynamics;
 };
 
