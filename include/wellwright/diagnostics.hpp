@@ -81,6 +81,9 @@ std::string listed(const std::vector<std::string>& words);
 /// "did you mean `a` or `b`?"; empty for no candidates.
 std::string did_you_mean(const std::vector<std::string>& candidates);
 
+/// Bytes of the UTF-8 character that begins at byte `at` of `text`; 0 where there is none (RFC 3629).
+std::size_t utf8_bytes(std::string_view text, std::size_t at);
+
 /// The columns a terminal needs to show UTF-8 `text`.
 int displayed_width(std::string_view text);
 

@@ -96,7 +96,7 @@ class MaterialTable {
   static MaterialTable from_yaml(const Node& root);
 
   /// The table with the `materials:` block of a study applied. Throws InputError.
-  MaterialTable with_overrides(const Node& materials_block, Notes& notes) const;
+  MaterialTable with_overrides(const Node& materials_block) const;
 
   /// Reads "Al0.3Ga0.7As" or the name of a medium of the study. Throws InputError at `place`.
   Alloy alloy(std::string_view text, const Place& place) const;

@@ -28,6 +28,19 @@ class Stopwatch {
   std::chrono::steady_clock::time_point last_ = std::chrono::steady_clock::now();
 };
 
+// A transition of the study's list can name a level that a window or a layer does not hold.
+void warn_of_missing(const Study& study, const Levels& levels, Notes& notes) {
+  for (const auto& [from, to] : study.model.transitions) {
+    const int beyond = std::max(from, to), count = levels.count();
+    if (beyond <= count) continue;
+    notes.warn(fmt::format("transition [{}, {}] of the {} is left out: it names level {}, and {} computed",
+                           from, to, name_of(levels.profile.carrier), beyond,
+                           count == 0   ? "no level was"
+                           : count == 1 ? "1 level was"
+                                        : fmt::format("{} levels were", count)));
+  }
+}
+
 CarrierAnswer answer_for(const Study& study, Carrier carrier, Notes& notes, const Progress& progress,
                          Stopwatch& watch) {
   CarrierAnswer part;
@@ -43,6 +56,7 @@ CarrierAnswer answer_for(const Study& study, Carrier carrier, Notes& notes, cons
   }
   part.transitions = transitions(part.levels);
   watch.lap(fmt::format("transitions of the {}", name));
+  warn_of_missing(study, part.levels, notes);
   part.sensitivity = sensitivity(study, part.levels, listed_transitions(study, part.levels.count()));
   watch.lap(fmt::format("derivatives of the {}", name));
   return part;

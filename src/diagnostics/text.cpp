@@ -32,13 +32,14 @@ bool within(const CodeRange (&ranges)[N], char32_t code) {
                      [&](const CodeRange& r) { return code >= r.first && code <= r.last; });
 }
 
-// The code at `at` and how many bytes it takes; 0 bytes where it is no UTF-8.
+// The code at `at` and how many bytes it takes; 0 bytes where it is no UTF-8 (RFC 3629: no longer form than
+// needed, no surrogates).
 std::pair<char32_t, std::size_t> decode(std::string_view text, std::size_t at) {
   const auto byte = [&](std::size_t i) { return static_cast<unsigned char>(text[i]); };
   const unsigned char lead = byte(at);
   if (lead < 0x80) return {lead, 1};
-  const std::size_t length = lead >= 0xF0 && lead < 0xF5 ? 4 : lead >= 0xE0 ? 3 : lead >= 0xC2 ? 2 : 0;
-  if (length == 0 || lead >= 0xF5 || at + length > text.size()) return {0, 0};
+  const std::size_t length = lead >= 0xF5 ? 0 : lead >= 0xF0 ? 4 : lead >= 0xE0 ? 3 : lead >= 0xC2 ? 2 : 0;
+  if (length == 0 || at + length > text.size()) return {0, 0};
   char32_t code = lead & (0xFFu >> (length + 1));
   for (std::size_t i = 1; i < length; ++i) {
     if ((byte(at + i) & 0xC0u) != 0x80u) return {0, 0};
@@ -90,6 +91,10 @@ std::vector<Character> characters_of(std::string_view text) {
     at += std::max<std::size_t>(length, 1);
   }
   return out;
+}
+
+std::size_t utf8_bytes(std::string_view text, std::size_t at) {
+  return decode(text, at).second;
 }
 
 int displayed_width(std::string_view text) {

@@ -16,20 +16,6 @@ bool continues(char c) {
   return (static_cast<unsigned char>(c) & 0xC0u) == 0x80u;
 }
 
-// Bytes of the UTF-8 character at `at`, 0 when broken.
-std::size_t character_length(std::string_view text, std::size_t at) {
-  const auto lead = static_cast<unsigned char>(text[at]);
-  const std::size_t length = lead < 0x80                   ? 1
-                             : lead >= 0xC2 && lead < 0xE0 ? 2
-                             : (lead & 0xF0u) == 0xE0      ? 3
-                             : lead >= 0xF0 && lead < 0xF5 ? 4
-                                                           : 0;
-  if (length == 0 || at + length > text.size()) return 0;
-  for (std::size_t i = 1; i < length; ++i)
-    if (!continues(text[at + i])) return 0;
-  return length;
-}
-
 }  // namespace
 
 int characters(std::string_view text) {
@@ -105,7 +91,7 @@ void Lines::check() const {
       if ((byte < 0x20 && byte != '\t') || byte == 0x7F)
         throw InputError(fmt::format("this is no text: it holds the byte 0x{:02X}", byte), place(row, at),
                          "a study is a plain text file");
-      const std::size_t length = character_length(whole, at);
+      const std::size_t length = utf8_bytes(whole, at);
       if (length == 0)
         throw InputError(fmt::format("the byte 0x{:02X} is no UTF-8", byte), place(row, at),
                          "save the file in UTF-8");

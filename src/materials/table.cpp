@@ -129,7 +129,7 @@ MaterialTable MaterialTable::from_yaml(const Node& root) {
   return table;
 }
 
-MaterialTable MaterialTable::with_overrides(const Node& block, Notes& notes) const {
+MaterialTable MaterialTable::with_overrides(const Node& block) const {
   auto data = std::make_shared<Data>(*data_);
   for (const Node::Entry& entry : block.entries()) {
     const Written written = read_values(entry);
@@ -187,7 +187,6 @@ MaterialTable MaterialTable::with_overrides(const Node& block, Notes& notes) con
     made.fraction = alloy.fraction;
     data->overrides.push_back(made);
   }
-  (void)notes;
   MaterialTable table;
   table.data_ = std::move(data);
   return table;

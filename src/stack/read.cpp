@@ -214,10 +214,8 @@ Stack read_stack(const Node& root, const MaterialTable& table, Notes& notes) {
     if (!materials.is_map())
       throw InputError("`materials` is not a map", materials.place(),
                        "write GaAs: {electron_mass: 0.067} below it");
-    Notes repeated;
-    stack.table = std::make_shared<MaterialTable>(table.with_overrides(materials, notes));
-    stack.scale_table =
-        std::make_shared<MaterialTable>(table.with_overrides(only_variants(materials), repeated));
+    stack.table = std::make_shared<MaterialTable>(table.with_overrides(materials));
+    stack.scale_table = std::make_shared<MaterialTable>(table.with_overrides(only_variants(materials)));
   } else {
     stack.table = std::make_shared<MaterialTable>(table);
   }

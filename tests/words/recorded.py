@@ -1,6 +1,6 @@
 #!/usr/bin/env python3
 # SPDX-License-Identifier: Apache-2.0
-"""Recorded runs of the command: one file a mistake, with its exit code and the exact text on standard error.
+"""Recorded runs of the command: one file a mistake or a warning, with its exit code and the exact text on standard error.
 
     recorded.py PROGRAM [--record] [CASE...]
 
@@ -16,8 +16,9 @@ A case holds what the mistake is, the files it needs, the command line, the exit
     study.yaml:1:38: ...
 
 `== bytes NAME` holds a Python expression for the bytes of a file, `== output` the text on standard output
-(empty where it is left out). Each case runs in a folder of its own, and nothing in it may change. With
---record the exit code and the texts are written into the case instead of compared: read them as a user would.
+(empty where it is left out). Each case runs in a folder of its own, and nothing in it may change but for the
+files that `== writes NAME` names. With --record the exit code and the texts are written into the case instead of
+compared: read them as a user would.
 """
 import difflib
 import os
@@ -48,12 +49,15 @@ class Case:
         self.path = path
         self.about, parts = sections(path.read_text().removesuffix("\n"))
         self.files, self.exit, self.errors, self.output, self.command = {}, None, "", "", None
+        self.writes = []
         for head, body in parts:
             word, _, rest = head.partition(" ")
             if word == "file":
                 self.files[rest] = body.encode()
             elif word == "bytes":
                 self.files[rest] = eval(body.strip(), {})  # an expression of this repository
+            elif word == "writes":
+                self.writes.append(rest)
             elif word == "command":
                 self.command = body.strip()
             elif word == "exit":
@@ -118,20 +122,20 @@ def main():
         except subprocess.TimeoutExpired:
             code, errors, output, changed = None, f"still running after {SECONDS} s\n", "", []
         trouble = ""
-        if changed:
-            trouble += f"changed on disk: {', '.join(changed)}\n"
+        if changed != sorted(case.writes):
+            trouble += f"changed on disk: {', '.join(changed) or 'nothing'}; recorded: {', '.join(case.writes) or 'nothing'}\n"
         if recording:
             case.record(code, errors, output)
         else:
             if code != case.exit:
                 trouble += f"exit code {code}, recorded {case.exit}\n"
             trouble += difference("errors", case.errors, errors) + difference("output", case.output, output)
-        if code not in (2, 3, 4):
-            trouble += f"exit code {code} is none of a mistake\n"
+        if code not in (2, 3, 4) and not (code == 0 and errors.startswith("warning: ")):
+            trouble += f"exit code {code} is none of a mistake, and no warning was given\n"
         if trouble:
             failed += 1
             print(f"{path.parent.name}/{path.stem}: {case.about.strip()}\n{trouble}")
-    print(f"{len(cases) - failed} of {len(cases)} mistakes answered as recorded")
+    print(f"{len(cases) - failed} of {len(cases)} mistakes and warnings answered as recorded")
     return 1 if failed or not cases else 0
 
 

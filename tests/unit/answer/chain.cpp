@@ -44,6 +44,17 @@ TEST_CASE("A photoexcited start brings its holes along; the electron moves") {
   CHECK(a.dynamics->amplitude.size() == a.find(Carrier::electron)->levels.count());
 }
 
+TEST_CASE("A listed transition to a level that the window does not hold is named") {
+  const std::string window = "model: {levels: {below: 0.2 eV}, transitions: [[1, 2], [2, 7]]}\n";
+  const Answer a = ask(window);
+  REQUIRE(a.carriers[0].levels.count() == 2);
+  REQUIRE(a.notes.warnings().size() == 1);
+  CHECK(a.notes.warnings()[0] ==
+        "transition [2, 7] of the electron is left out: it names level 7, and 2 levels were computed");
+  CHECK(a.carriers[0].sensitivity.transitions == std::vector<std::pair<int, int>>{{1, 2}});
+  CHECK(ask("model: {transitions: [[1, 2], [2, 6]]}\n").notes.warnings().empty());
+}
+
 TEST_CASE("The same study gives the same answer, digit by digit") {
   const std::string motion = "dynamics: {start: {mix: [{level: 1}, {level: 2}]}, samples: 11}\n";
   const Answer one = ask(motion), two = ask(motion);

@@ -42,6 +42,20 @@ TEST_CASE("The caret goes by displayed width") {
   CHECK(displayed_width("\xFF\xFE") == 2);  // no UTF-8: shown as replacement marks
 }
 
+TEST_CASE("UTF-8 is taken as RFC 3629 has it") {
+  // Well-formed: one to four bytes. Refused: a lone continuation, a cut character, a longer form than needed,
+  // a surrogate, a code above U+10FFFF.
+  CHECK(utf8_bytes("a", 0) == 1);
+  CHECK(utf8_bytes("\xC2\xB5", 0) == 2);
+  CHECK(utf8_bytes("\xE2\x82\xAC", 0) == 3);
+  CHECK(utf8_bytes("\xF0\x9F\x94\xAC", 0) == 4);
+  for (const char* broken : {"\x80", "\xE2\x82", "\xC0\x80", "\xE0\x80\x80", "\xED\xA0\x80",
+                             "\xF4\x90\x80\x80", "\xF5\x80\x80\x80"}) {
+    CAPTURE(broken);
+    CHECK(utf8_bytes(broken, 0) == 0);
+  }
+}
+
 TEST_CASE("Two places that contradict are both quoted") {
   Place other = place_at("field: 1 kV/cm", 1, 5);
   other.line = 3;

@@ -89,9 +89,8 @@ double nitride_sheet(const MaterialTable& t) {
 }
 
 MaterialTable hexagonal() {
-  Notes notes;
   return table.with_overrides(
-      read_yaml("GaN: {variant: hexagonal reference}\nAlN: {variant: hexagonal reference}", "test"), notes);
+      read_yaml("GaN: {variant: hexagonal reference}\nAlN: {variant: hexagonal reference}", "test"));
 }
 
 struct Check {
@@ -249,8 +248,7 @@ TEST_CASE("The two mass rules agree at 0 K") {
 }
 
 TEST_CASE("Wavelength-setting choices are named variants") {
-  Notes notes;
-  const auto with = [&](const char* yaml) { return table.with_overrides(read_yaml(yaml, "test"), notes); };
+  const auto with = [&](const char* yaml) { return table.with_overrides(read_yaml(yaml, "test")); };
   const auto gap_of = [&](const MaterialTable& t, double T) {
     return t.resolve(t.alloy("Al0.3Ga0.7As", Place{}), at(T)).band_gap;
   };

@@ -15,8 +15,7 @@ Alloy alloy(const MaterialTable& t, const char* text) {
   return t.alloy(text, Place{});
 }
 MaterialTable with(const char* yaml) {
-  Notes notes;
-  return table.with_overrides(read_yaml(yaml, "study.yaml"), notes);
+  return table.with_overrides(read_yaml(yaml, "study.yaml"));
 }
 std::string trouble(const std::function<void()>& work) {
   try {
