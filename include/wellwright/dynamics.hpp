@@ -42,6 +42,12 @@ Dynamics superpose(const Study& study, const Levels& levels, const Transitions& 
 /// Amplitudes of the levels at the times of `dynamics`: c_k exp(-i E_k t / hbar), (level, time).
 Eigen::MatrixXcd amplitudes_in_time(const Levels& levels, const Dynamics& dynamics);
 
+/// The same in blocks of a few megabytes, for many times: `take(first_level, first_time, block)` gets (level,
+/// time) blocks that hold some levels at all times or one level at some times, in that order.
+void amplitudes_in_blocks(
+    const Levels& levels, const Dynamics& dynamics,
+    const std::function<void(int first_level, int first_time, const Eigen::MatrixXcd& block)>& take);
+
 /// |psi(z, t)|^2 [1/nm] in blocks of times, formed by matrix products: `take(first_time, block)` gets (time,
 /// z) blocks.
 void density_map(const Levels& levels, const Dynamics& dynamics,

@@ -36,9 +36,24 @@ void write_density(hdf5::Group& parent, const Levels& levels, const Dynamics& dy
              Eigen::Map<const Eigen::VectorXd>(dynamics.density_z.data(),
                                                static_cast<Eigen::Index>(dynamics.density_z.size())),
              {"nm", "position along growth"});
-  group.begin_rows("probability_density", "time", "z", {"nm-1", "probability density of all components"});
+  group.begin_blocks("probability_density", "time", "z", {"nm-1", "probability density of all components"});
   density_map(levels, dynamics, [&](int first, const Eigen::MatrixXd& block) {
-    group.write_rows("probability_density", static_cast<std::size_t>(first), block);
+    group.write_block("probability_density", first, 0, block);
+  });
+}
+
+// In blocks: all of them would be some gigabytes for many levels and a million times.
+void write_amplitudes(hdf5::Group& group, const Levels& levels, const Dynamics& dynamics) {
+  const auto begin = [&](const char* name, const char* long_name) {
+    group.begin_blocks(name, "level", "time", {"1", long_name});
+  };
+  begin("amplitude_real", "real part of the level's amplitude");
+  begin("amplitude_imag", "imaginary part of the level's amplitude");
+  begin("population", "population of the level");
+  amplitudes_in_blocks(levels, dynamics, [&](int level, int time, const Eigen::MatrixXcd& block) {
+    group.write_block("amplitude_real", level, time, block.real());
+    group.write_block("amplitude_imag", level, time, block.imag());
+    group.write_block("population", level, time, block.cwiseAbs2());
   });
 }
 
@@ -53,16 +68,12 @@ void write_dynamics(const hdf5::Group& root, const Levels& levels, const Dynamic
   group.count_axis("level", static_cast<std::size_t>(levels.count()), "level");
   group.count_axis("layer", static_cast<std::size_t>(dynamics.layer_probability.rows()),
                    "layer, counted from 1 at the substrate");
-  const Eigen::MatrixXcd amplitude = amplitudes_in_time(levels, dynamics);
-  group.matrix("amplitude_real", "level", "time", amplitude.real(),
-               {"1", "real part of the level's amplitude"});
-  group.matrix("amplitude_imag", "level", "time", amplitude.imag(),
-               {"1", "imaginary part of the level's amplitude"});
-  group.matrix("population", "level", "time", amplitude.cwiseAbs2(), {"1", "population of the level"});
+  write_amplitudes(group, levels, dynamics);
   group.vector("mean_position", "time", dynamics.mean_position, {"nm", "mean position"});
   group.vector("survival", "time", dynamics.survival, {"1", "probability of the start state"});
-  group.matrix("layer_probability", "layer", "time", dynamics.layer_probability,
-               {"1", "probability in each layer"});
+  group.begin_blocks("layer_probability", "layer", "time", {"1", "probability in each layer"});
+  for (Eigen::Index layer = 0; layer < dynamics.layer_probability.rows(); ++layer)
+    group.write_block("layer_probability", layer, 0, dynamics.layer_probability.row(layer));
   if (!dynamics.density_z.empty()) write_density(group, levels, dynamics);
   write_beats(root, dynamics);
 }

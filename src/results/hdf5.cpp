@@ -194,21 +194,21 @@ void Group::matrix(const std::string& name, const std::string& rows, const std::
   write(name, {rows, columns}, turned.data(), words);
 }
 
-void Group::begin_rows(const std::string& name, const std::string& rows, const std::string& columns,
-                       const Words& words) {
+void Group::begin_blocks(const std::string& name, const std::string& rows, const std::string& columns,
+                         const Words& words) {
   open_.emplace(name, make(name, {rows, columns}, H5T_NATIVE_DOUBLE, words));
 }
 
-void Group::write_rows(const std::string& name, std::size_t first, const Eigen::MatrixXd& block) {
+void Group::write_block(const std::string& name, Eigen::Index row, Eigen::Index column,
+                        const RowMatrix& block) {
   const Handle& dataset = open_.at(name);
-  const hsize_t start[2] = {first, 0};
+  const hsize_t start[2] = {static_cast<hsize_t>(row), static_cast<hsize_t>(column)};
   const hsize_t count[2] = {static_cast<hsize_t>(block.rows()), static_cast<hsize_t>(block.cols())};
   const Handle file_space(H5Dget_space(dataset.id()), H5Sclose, "writing a dataset");
   check(H5Sselect_hyperslab(file_space.id(), H5S_SELECT_SET, start, nullptr, count, nullptr),
         "writing a dataset");
   const Handle memory(H5Screate_simple(2, count, nullptr), H5Sclose, "writing a dataset");
-  const RowMatrix rows = block;
-  check(H5Dwrite(dataset.id(), H5T_NATIVE_DOUBLE, memory.id(), file_space.id(), H5P_DEFAULT, rows.data()),
+  check(H5Dwrite(dataset.id(), H5T_NATIVE_DOUBLE, memory.id(), file_space.id(), H5P_DEFAULT, block.data()),
         "writing a dataset");
 }
 
@@ -247,22 +247,23 @@ void File::close() {
   handle_.close("closing the file");
 }
 
-std::string root_attribute(const std::string& path, const char* name) {
+std::optional<std::string> root_attribute(const std::string& path, const char* name) {
   begin();
   if (H5Fis_hdf5(path.c_str()) <= 0) return {};
-  try {
-    const Handle file(H5Fopen(path.c_str(), H5F_ACC_RDONLY, H5P_DEFAULT), H5Fclose, "opening");
-    const Handle attribute(H5Aopen(file.id(), name, H5P_DEFAULT), H5Aclose, "reading");
-    const Handle type(H5Aget_type(attribute.id()), H5Tclose, "reading");
-    if (H5Tis_variable_str(type.id()) <= 0) return {};
-    char* text = nullptr;
-    if (H5Aread(attribute.id(), type.id(), &text) < 0 || !text) return {};
-    std::string out = text;
-    H5free_memory(text);
-    return out;
-  } catch (const Trouble&) {
-    return {};
-  }
+  const Handle file(H5Fopen(path.c_str(), H5F_ACC_RDONLY, H5P_DEFAULT), H5Fclose, "opening");
+  const htri_t there = H5Aexists(file.id(), name);
+  if (there < 0) throw Trouble{"reading"};
+  if (there == 0) return {};
+  const Handle attribute(H5Aopen(file.id(), name, H5P_DEFAULT), H5Aclose, "reading");
+  const Handle type(H5Aget_type(attribute.id()), H5Tclose, "reading");
+  const Handle space(H5Aget_space(attribute.id()), H5Sclose, "reading");
+  if (H5Tis_variable_str(type.id()) <= 0 || H5Sget_simple_extent_npoints(space.id()) != 1) return {};
+  char* text = nullptr;
+  check(H5Aread(attribute.id(), type.id(), &text), "reading");
+  if (!text) return {};
+  std::string out = text;
+  H5free_memory(text);
+  return out;
 }
 
 }  // namespace wellwright::hdf5

@@ -7,6 +7,7 @@
 
 #include <Eigen/Core>
 #include <map>
+#include <optional>
 #include <string>
 #include <string_view>
 #include <vector>
@@ -69,10 +70,10 @@ class Group {
   /// Rows along the first axis.
   void matrix(const std::string& name, const std::string& rows, const std::string& columns,
               const Eigen::MatrixXd& values, const Words& words);
-  /// A matrix whose rows arrive in blocks: made empty here, filled by write_rows.
-  void begin_rows(const std::string& name, const std::string& rows, const std::string& columns,
-                  const Words& words);
-  void write_rows(const std::string& name, std::size_t first, const Eigen::MatrixXd& block);
+  /// A matrix that arrives in blocks: made empty here, filled by write_block.
+  void begin_blocks(const std::string& name, const std::string& rows, const std::string& columns,
+                    const Words& words);
+  void write_block(const std::string& name, Eigen::Index row, Eigen::Index column, const RowMatrix& block);
 
  private:
   struct Axis {
@@ -101,8 +102,8 @@ class File {
   Handle handle_;
 };
 
-/// The text attribute `name` of the root of the HDF5 file at `path`; empty when there is none or it is no
-/// such file.
-std::string root_attribute(const std::string& path, const char* name);
+/// The text attribute `name` of the root of the HDF5 file at `path`; nothing when it is no such file or has
+/// no such text. Throws Trouble when it begins as one but cannot be read.
+std::optional<std::string> root_attribute(const std::string& path, const char* name);
 
 }  // namespace wellwright::hdf5

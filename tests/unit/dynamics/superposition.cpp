@@ -118,3 +118,25 @@ TEST_CASE("Levels at equal distances have one classical period and no revival") 
   CHECK(*d.classical_period == Approx(constants::planck / 0.010).epsilon(1e-9));
   CHECK_FALSE(d.revival_time);  // equal distances: no second scale
 }
+
+TEST_CASE("Amplitudes in blocks are the amplitudes, each once, and a block stays small") {
+  Run r = run(hand_made::double_well(Bands::one), MixStart{{{1, 1, 0}, {3, 1, 0.4}}}, 1, 2);
+  REQUIRE(r.levels.count() >= 3);
+  // Many levels at few times, and one level at a part of many times.
+  for (const Eigen::Index times :
+       {Eigen::Index{1}, Eigen::Index{7}, Eigen::Index{100000}, Eigen::Index{300001}}) {
+    r.dynamics.time = Eigen::VectorXd::LinSpaced(times, 0, 1);
+    const Eigen::MatrixXcd all = amplitudes_in_time(r.levels, r.dynamics);
+    Eigen::MatrixXcd gathered = Eigen::MatrixXcd::Zero(all.rows(), all.cols());
+    Eigen::Index values = 0, largest = 0;
+    amplitudes_in_blocks(r.levels, r.dynamics, [&](int level, int time, const Eigen::MatrixXcd& block) {
+      REQUIRE((block.cols() == times || block.rows() == 1));  // in one piece of a file
+      gathered.block(level, time, block.rows(), block.cols()) += block;
+      values += block.size();
+      largest = std::max(largest, block.size());
+    });
+    CHECK(gathered == all);
+    CHECK(values == all.size());
+    CHECK(largest <= 1 << 18);
+  }
+}
