@@ -18,7 +18,8 @@ void write_result(const Answer& answer, const std::string& path);
 /// Throws FileTrouble now, before any work is done, if write_result would refuse `path`.
 void check_target(const std::string& path);
 
-/// Writes levels.csv, transitions.csv, beats.csv (one set a carrier) into `folder`, made if missing. Throws
+/// Writes levels.csv, transitions.csv, beats.csv (one set a carrier) into `folder`, made if missing, with all
+/// digits; each is written whole or not at all. Throws
 /// FileTrouble.
 void write_csv(const Answer& answer, const std::string& folder);
 

@@ -4,11 +4,14 @@
 #include <unistd.h>  // for access
 
 #include <cmath>
-#include <cstdio>
 #include <filesystem>
 #include <fstream>
+#include <memory>
+#include <set>
 
 #include "results/names.hpp"
+#include "results/target.hpp"
+#include "results/unfinished.hpp"
 #include "wellwright/results.hpp"
 
 namespace wellwright {
@@ -26,8 +29,9 @@ constexpr const char* transition_header =
 constexpr const char* beat_header =
     "lower,upper,energy (eV),period (ps),frequency (THz),dipole amplitude (nm)";
 
+// All digits, so that the table holds the number of the result file.
 std::string number(double value) {
-  return std::isfinite(value) ? fmt::format("{:.12g}", value) : std::string();
+  return std::isfinite(value) ? fmt::format("{}", value) : std::string();
 }
 
 std::string quoted(const std::string& text) {
@@ -74,33 +78,45 @@ std::string beats_table(const Dynamics& dynamics) {
   return out;
 }
 
-// A table is replaced only when it begins with the header of that table.
-void check_table(const fs::path& path, std::string_view header) {
+// The file to write for a table. One that is there is replaced only when it begins with the header of that
+// table.
+fs::path checked_table(const fs::path& path, std::string_view header) {
+  const fs::path end = writable_file(path.string());
   std::error_code none;
-  if (!fs::exists(path, none)) return;
+  if (!fs::exists(end, none)) return end;
+  std::ifstream file(end);
+  if (!file)
+    throw FileTrouble(fmt::format("{}: the file there cannot be read and is left as it is", path.string()));
   std::string first;
-  std::ifstream file(path);
-  if (!fs::is_regular_file(path, none) || !std::getline(file, first) ||
-      std::string_view(first).substr(0, header.size()) != header)
+  std::getline(file, first);
+  if (std::string_view(first).substr(0, header.size()) != header)
     throw FileTrouble(
         fmt::format("{}: this file was not written by wellwright and is left as it is", path.string()));
+  return end;
 }
 
-void write_table(const fs::path& path, const std::string& text) {
-  const fs::path unfinished = path.string() + ".unfinished";
-  {
-    std::ofstream file(unfinished, std::ios::binary | std::ios::trunc);
-    file << text;
-    file.flush();
-    if (!file) {
-      std::error_code none;
-      fs::remove(unfinished, none);
-      throw FileTrouble(fmt::format("{}: cannot be written", path.string()));
-    }
+void write_tables(const Answer& answer, const std::string& folder) {
+  std::vector<std::tuple<fs::path, std::string_view, std::string>> tables;
+  for (const CarrierAnswer& part : answer.carriers) {
+    const Carrier carrier = part.levels.profile.carrier;
+    tables.emplace_back(fs::path(folder) / (group_of("levels", carrier) + ".csv"), level_header,
+                        levels_table(answer.study, part.levels));
+    tables.emplace_back(fs::path(folder) / (group_of("transitions", carrier) + ".csv"), transition_header,
+                        transitions_table(part.transitions));
   }
-  std::error_code error;
-  fs::rename(unfinished, path, error);
-  if (error) throw FileTrouble(fmt::format("{}: cannot be put in place: {}", path.string(), error.message()));
+  if (answer.dynamics)
+    tables.emplace_back(fs::path(folder) / "beats.csv", beat_header, beats_table(*answer.dynamics));
+  // All of them are written before the first is put in place.
+  std::vector<std::unique_ptr<Unfinished>> files;
+  std::set<fs::path> folders = {folder};
+  for (const auto& [path, header, text] : tables) {
+    const fs::path end = checked_table(path, header);
+    folders.insert(folder_of(end));
+    files.push_back(std::make_unique<Unfinished>(end, path.string()));
+    files.back()->write(text);
+  }
+  for (const auto& file : files) file->put_in_place();
+  for (const fs::path& each : folders) sync_folder(each);
 }
 
 }  // namespace
@@ -119,30 +135,24 @@ void check_csv(const std::string& folder) {
   if (access(folder.c_str(), W_OK) != 0)
     throw FileTrouble(fmt::format("{}: the folder cannot be written to", folder));
   for (const Carrier carrier : {Carrier::electron, Carrier::heavy_hole, Carrier::light_hole}) {
-    check_table(fs::path(folder) / (group_of("levels", carrier) + ".csv"), level_header);
-    check_table(fs::path(folder) / (group_of("transitions", carrier) + ".csv"), transition_header);
+    checked_table(fs::path(folder) / (group_of("levels", carrier) + ".csv"), level_header);
+    checked_table(fs::path(folder) / (group_of("transitions", carrier) + ".csv"), transition_header);
   }
-  check_table(fs::path(folder) / "beats.csv", beat_header);
+  checked_table(fs::path(folder) / "beats.csv", beat_header);
 }
 
 void write_csv(const Answer& answer, const std::string& folder) {
   std::error_code error;
   if (fs::exists(folder, error) && !fs::is_directory(folder, error))
     throw FileTrouble(fmt::format("{}: this is no folder", folder));
-  fs::create_directories(folder, error);
+  const bool made = fs::create_directories(folder, error);
   if (error) throw FileTrouble(fmt::format("{}: the folder cannot be made: {}", folder, error.message()));
-  std::vector<std::tuple<fs::path, std::string_view, std::string>> tables;
-  for (const CarrierAnswer& part : answer.carriers) {
-    const Carrier carrier = part.levels.profile.carrier;
-    tables.emplace_back(fs::path(folder) / (group_of("levels", carrier) + ".csv"), level_header,
-                        levels_table(answer.study, part.levels));
-    tables.emplace_back(fs::path(folder) / (group_of("transitions", carrier) + ".csv"), transition_header,
-                        transitions_table(part.transitions));
+  try {
+    write_tables(answer, folder);
+  } catch (const FileTrouble&) {
+    if (made) fs::remove(folder, error);
+    throw;
   }
-  if (answer.dynamics)
-    tables.emplace_back(fs::path(folder) / "beats.csv", beat_header, beats_table(*answer.dynamics));
-  for (const auto& [path, header, text] : tables) check_table(path, header);
-  for (const auto& [path, header, text] : tables) write_table(path, text);
 }
 
 }  // namespace wellwright

@@ -79,6 +79,17 @@ def main():
     (WORK / "folder.h5").mkdir()
     assert run(small, "-o", WORK / "folder.h5").returncode == 4
     assert run(small, "-o", WORK / "nowhere" / "out.h5").returncode == 4
+    os.mkfifo(WORK / "pipe.h5")
+    for special, kind in ((WORK / "pipe.h5", "a named pipe"), ("/dev/null", "a device")):
+        refused = run(small, "-o", special, timeout=20)
+        assert refused.returncode == 4 and f"{special}: this is {kind}" in refused.stderr, refused.stderr
+    (WORK / "link.h5").symlink_to("out.h5")
+    assert run(small, "-o", WORK / "link.h5").returncode == 0
+    assert (WORK / "link.h5").is_symlink() and not out.is_symlink()
+    damaged = WORK / "damaged.h5"
+    damaged.write_bytes(whole[:len(whole) // 2])
+    refused = run(small, "-o", damaged)
+    assert refused.returncode == 4 and "is damaged" in refused.stderr, refused.stderr
     assert not leftovers()
 
     tables = WORK / "tables"
