@@ -11,6 +11,8 @@
 
 namespace wellwright {
 
+using RowMatrix = Eigen::Matrix<double, Eigen::Dynamic, Eigen::Dynamic, Eigen::RowMajor>;
+
 /// One pair of levels that beats in <z>(t).
 struct Beat {
   int lower = 0, upper = 0;     ///< counted from 1
@@ -49,8 +51,8 @@ void amplitudes_in_blocks(
     const std::function<void(int first_level, int first_time, const Eigen::MatrixXcd& block)>& take);
 
 /// |psi(z, t)|^2 [1/nm] in blocks of times, formed by matrix products: `take(first_time, block)` gets (time,
-/// z) blocks.
+/// z) blocks, row-major as files hold them.
 void density_map(const Levels& levels, const Dynamics& dynamics,
-                 const std::function<void(int first_time, const Eigen::MatrixXd& block)>& take);
+                 const std::function<void(int first_time, const RowMatrix& block)>& take);
 
 }  // namespace wellwright

@@ -16,7 +16,7 @@ std::vector<double> map_points(double length) {
 }
 
 void density_map(const Levels& levels, const Dynamics& dynamics,
-                 const std::function<void(int first_time, const Eigen::MatrixXd& block)>& take) {
+                 const std::function<void(int first_time, const RowMatrix& block)>& take) {
   const auto points = static_cast<Eigen::Index>(dynamics.density_z.size());
   if (points == 0) return;
   Movers movers(levels, dynamics.amplitude);
@@ -24,14 +24,15 @@ void density_map(const Levels& levels, const Dynamics& dynamics,
     component = interpolate(levels.profile.grid, component, dynamics.density_z);
   Eigen::MatrixXcd a;
   Density density;
-  Eigen::MatrixXd rows;
-  const Eigen::Index step = times_together(points);
+  // Few enough that all working matrices stay in the cache, and their memory is used again from block to
+  // block.
+  constexpr Eigen::Index together = 1 << 15;
+  const Eigen::Index step = std::max<Eigen::Index>(1, together / points);
   for (Eigen::Index first = 0; first < dynamics.time.size(); first += step) {
     const auto count = std::min<Eigen::Index>(step, dynamics.time.size() - first);
     phases(movers.energy, movers.amplitude, dynamics.time.segment(first, count), a);
     density.form(movers.components, a);
-    rows = density.value.transpose();
-    take(static_cast<int>(first), rows);
+    take(static_cast<int>(first), density.value);
   }
 }
 

@@ -9,10 +9,10 @@ namespace wellwright {
 void Density::form(const std::vector<Eigen::MatrixXd>& components, const Eigen::MatrixXcd& a) {
   real = a.real();
   imaginary = a.imag();
-  value.setZero(components.front().rows(), a.cols());
+  value.setZero(a.cols(), components.front().rows());
   for (const Eigen::MatrixXd& component : components)
     for (const Eigen::MatrixXd* times : {&real, &imaginary}) {
-      part.noalias() = component * *times;
+      part.noalias() = times->transpose() * component.transpose();
       value += part.cwiseAbs2();
     }
 }
@@ -36,7 +36,7 @@ Observed::Observed(const Grid& grid, const Movers& movers, int layers)
 void Observed::at(const Eigen::MatrixXcd& a, Eigen::MatrixXd& values) {
   if (!by_pairs_) {
     density_.form(movers_->components, a);
-    values = integrals(density_.value);
+    values = integrals(density_.value.transpose());
     return;
   }
   interference_.resize(pairs_, a.cols());
@@ -48,7 +48,7 @@ void Observed::at(const Eigen::MatrixXcd& a, Eigen::MatrixXd& values) {
 }
 
 // Of element-local densities in columns: the integral over each layer, then that of z times the density.
-Eigen::MatrixXd Observed::integrals(const Eigen::MatrixXd& density) const {
+Eigen::MatrixXd Observed::integrals(const Eigen::Ref<const Eigen::MatrixXd>& density) const {
   Eigen::MatrixXd out = Eigen::MatrixXd::Zero(rows_, density.cols());
   const int n = grid_->degree + 1;
   for (int e = 0; e < grid_->elements(); ++e)

@@ -3,16 +3,18 @@
 #pragma once
 
 #include "dynamics/movers.hpp"
+#include "wellwright/dynamics.hpp"
 
 namespace wellwright {
 
 /// Densities of superpositions, with the matrices they are formed in kept from block to block.
 struct Density {
-  /// Sum over components of |component * a|^2: `value` becomes (point, time) for components (point, mover)
+  /// Sum over components of |component * a|^2: `value` becomes (time, point) for components (point, mover)
   /// and amplitudes (mover, time).
   void form(const std::vector<Eigen::MatrixXd>& components, const Eigen::MatrixXcd& a);
 
-  Eigen::MatrixXd value, real, imaginary, part;
+  RowMatrix value, part;
+  Eigen::MatrixXd real, imaginary;
 };
 
 /// Layer probabilities and, last row, <z> [nm] at some times: of few levels as sums over pairs, (what, pair)
@@ -27,7 +29,7 @@ class Observed {
   void at(const Eigen::MatrixXcd& a, Eigen::MatrixXd& values);
 
  private:
-  Eigen::MatrixXd integrals(const Eigen::MatrixXd& density) const;
+  Eigen::MatrixXd integrals(const Eigen::Ref<const Eigen::MatrixXd>& density) const;
 
   const Grid* grid_;
   const Movers* movers_;

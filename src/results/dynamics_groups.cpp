@@ -37,7 +37,7 @@ void write_density(hdf5::Group& parent, const Levels& levels, const Dynamics& dy
                                                static_cast<Eigen::Index>(dynamics.density_z.size())),
              {"nm", "position along growth"});
   group.begin_blocks("probability_density", "time", "z", {"nm-1", "probability density of all components"});
-  density_map(levels, dynamics, [&](int first, const Eigen::MatrixXd& block) {
+  density_map(levels, dynamics, [&](int first, const RowMatrix& block) {
     group.write_block("probability_density", first, 0, block);
   });
 }

@@ -7,6 +7,7 @@
 
 #include <Eigen/Core>
 #include <map>
+#include <memory>
 #include <optional>
 #include <string>
 #include <string_view>
@@ -41,12 +42,15 @@ struct Words {
   std::string units, long_name, comment = {};
 };
 
+struct Tools;  // what a file being written shares, see tools.hpp
+struct Axis;
+
 using RowMatrix = Eigen::Matrix<double, Eigen::Dynamic, Eigen::Dynamic, Eigen::RowMajor>;
 
 /// A group whose axes are one-dimensional datasets of its own, attached to every dataset made after them.
 class Group {
  public:
-  explicit Group(Handle handle) : handle_(std::move(handle)) {}
+  Group(Handle handle, Tools& tools) : handle_(std::move(handle)), tools_(&tools) {}
   Group child(const std::string& name) const;
 
   void attribute(const char* name, const std::string& text) const;
@@ -76,30 +80,29 @@ class Group {
   void write_block(const std::string& name, Eigen::Index row, Eigen::Index column, const RowMatrix& block);
 
  private:
-  struct Axis {
-    std::size_t length = 0;
-    Handle dataset;
-  };
   Handle make(const std::string& name, const std::vector<std::string>& axes, hid_t type, const Words& words);
   void make_axis(const std::string& name, std::size_t length, hid_t type, const void* values,
                  const Words& words);
+  Handle create(const std::string& name, const std::vector<hsize_t>& shape, hid_t type) const;
   std::vector<hsize_t> shape_of(const std::vector<std::string>& axes) const;
 
   Handle handle_;
-  std::map<std::string, Axis> axes_;
+  Tools* tools_;
+  std::map<std::string, Axis*> axes_;
   std::map<std::string, Handle> open_;
 };
 
-/// A file being written to `path`: gathered in memory and written by close() when `in_memory`, else as it
-/// grows.
+/// A file being written to `path`. Groups do not outlive it; close() writes what is still to write.
 class File {
  public:
-  File(const std::string& path, bool in_memory);
+  explicit File(const std::string& path);
+  ~File();
   Group root() const;
   void close();
 
  private:
   Handle handle_;
+  std::unique_ptr<Tools> tools_;
 };
 
 /// The text attribute `name` of the root of the HDF5 file at `path`; nothing when it is no such file or has

@@ -15,8 +15,6 @@
 namespace wellwright {
 namespace {
 
-constexpr double largest_in_memory = 64e6;  // bytes; larger files go to disk as they grow
-
 std::string now_utc() {
   const std::time_t now = std::time(nullptr);
   std::tm parts{};
@@ -64,20 +62,6 @@ void write_all(hdf5::File& file, const Answer& answer) {
   write_dynamics(root, electrons ? electrons->levels : answer.carriers.front().levels, *answer.dynamics);
 }
 
-double bytes_of(const Answer& answer) {
-  double numbers = 1e5;
-  for (const CarrierAnswer& part : answer.carriers)
-    numbers += static_cast<double>(part.levels.envelope.size()) *
-               (2.0 + static_cast<double>(part.levels.companion.size()));
-  if (answer.dynamics) {
-    const auto times = static_cast<double>(answer.dynamics->time.size());
-    numbers += times * (static_cast<double>(answer.dynamics->density_z.size()) +
-                        3.0 * static_cast<double>(answer.dynamics->amplitude.size()) +
-                        static_cast<double>(answer.dynamics->layer_probability.rows()));
-  }
-  return 8 * numbers;
-}
-
 }  // namespace
 
 void write_result(const Answer& answer, const std::string& path) {
@@ -85,7 +69,7 @@ void write_result(const Answer& answer, const std::string& path) {
   const std::filesystem::path target = writable_file(path);
   Unfinished unfinished(target, path);
   try {
-    hdf5::File file(unfinished.name(), bytes_of(answer) < largest_in_memory);
+    hdf5::File file(unfinished.name());
     write_all(file, answer);
     file.close();
   } catch (const hdf5::Trouble& trouble) {

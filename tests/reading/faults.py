@@ -19,7 +19,7 @@ SMALL = """
 layers: [{material: Al0.3Ga0.7As, thickness: 20 nm}, {material: GaAs, thickness: 8 nm}, {material: Al0.3Ga0.7As, thickness: 20 nm}]
 model: {levels: 2}
 """
-# A map of some 100 MB, which goes to disk as it grows.
+# A map of some 100 MB.
 LARGE = SMALL + """
 dynamics: {start: {mix: [{level: 1, amplitude: 1}, {level: 2, amplitude: 1}]}, duration: 10 ps, samples: 60000}
 """

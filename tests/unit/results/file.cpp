@@ -125,6 +125,30 @@ TEST_CASE("Motion comes back: amplitudes, populations, beats and the map") {
   CHECK(same(file.values("/dynamics/density/probability_density"), map));
 }
 
+TEST_CASE("The library itself finds every axis attached to what stands over it") {
+  const ScratchFolder folder;
+  write_result(small_answer(two_levels_move), folder / "out.h5");
+  const hid_t file = H5Fopen((folder / "out.h5").c_str(), H5F_ACC_RDONLY, H5P_DEFAULT);
+  const auto attached = [&](const std::string& name, unsigned dimension, const std::string& axis) {
+    const hid_t dataset = H5Dopen2(file, name.c_str(), H5P_DEFAULT),
+                scale = H5Dopen2(file, axis.c_str(), H5P_DEFAULT);
+    const bool out = H5DSis_scale(scale) > 0 && H5DSis_attached(dataset, scale, dimension) > 0;
+    H5Dclose(dataset);
+    H5Dclose(scale);
+    return out;
+  };
+  CHECK(attached("/levels/energy", 0, "/levels/level"));
+  CHECK(attached("/levels/companion_envelope", 0, "/levels/component"));
+  CHECK(attached("/levels/companion_envelope", 1, "/levels/level"));
+  CHECK(attached("/levels/companion_envelope", 2, "/levels/z"));
+  CHECK(attached("/transitions/energy", 1, "/transitions/final"));
+  CHECK(attached("/dynamics/density/probability_density", 0, "/dynamics/density/time"));
+  CHECK(attached("/beats/period", 0, "/beats/beat"));
+  CHECK_FALSE(attached("/transitions/energy", 0, "/transitions/final"));
+  CHECK_FALSE(attached("/levels/energy", 0, "/levels/z"));
+  H5Fclose(file);
+}
+
 TEST_CASE("Amplitudes at very many times come back from the blocks they were written in") {
   const ScratchFolder folder;
   const Answer a = small_answer(
