@@ -105,6 +105,7 @@ struct KeyDeclaration {
   std::string sentence = {};  ///< for the reference page
   int step = 1;               ///< the step that brings it; keys of a later step are refused as not yet built
   std::vector<std::pair<std::string, int>> later = {};  ///< words that a later step brings, with that step
+  std::vector<std::string> other_names = {};  ///< what else people call it; only for the hint after a slip
 };
 
 }  // namespace wellwright

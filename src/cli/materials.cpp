@@ -50,6 +50,15 @@ Environment environment_of(const Request& request, const MaterialTable& table) {
   return environment;
 }
 
+// Between a cubic and a hexagonal crystal no strain is defined.
+void check_structures(const MaterialTable& table, const Alloy& alloy, const Alloy& substrate) {
+  const Structure one = table.structure(alloy), other = table.structure(substrate);
+  if ((one == Structure::wurtzite) == (other == Structure::wurtzite)) return;
+  throw InputError(fmt::format("the substrate {} is {} and {} is {}", substrate.text, structure_of(other),
+                               alloy.text, structure_of(one)),
+                   place_of("--substrate", substrate.text), "the substrate has the structure of the layers");
+}
+
 // A name that is a family of the table, such as AlGaAs, is resolved nowhere: it lacks fractions.
 bool resolves(const MaterialTable& table, const std::string& name, Alloy& alloy) {
   try {
@@ -119,6 +128,7 @@ std::string numbered(const char* head, const std::vector<std::string>& list, con
 
 int show_alloy(const Request& request, const MaterialTable& table, const Alloy& alloy) {
   Environment environment = environment_of(request, table);
+  if (environment.substrate) check_structures(table, alloy, *environment.substrate);
   if (table.structure(alloy) == Structure::wurtzite) environment.growth_plane = GrowthPlane::wurtzite_0001;
   const auto values = table.explain(alloy, environment);
   Notes notes;
@@ -157,7 +167,7 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
     if (!value.range.empty()) say("valid: " + value.range);
     say(value.note);
     recalled = recalled || value.recalled;
-    rows.add({value.key, significant(value.value, 6), value.unit == "1" ? "" : value.unit,
+    rows.add({value.key, fmt::format("{:.6g}", value.value), value.unit == "1" ? "" : value.unit,
               fmt::format("[{}]{}", number_of(sources, value.source), value.recalled ? " r" : ""),
               remark.empty() ? "" : fmt::format("({})", number_of(remarks, remark))});
   }
@@ -165,6 +175,11 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
       fmt::format("{} at {:g} K, {}\n", alloy.text, environment.temperature,
                   environment.substrate ? "strained to " + environment.substrate->text : "unstrained");
   text += rows.text(width);
+  if (!values.empty() && values.front().key == "conduction_band_edge")
+    text += wrapped(
+        "band edges: on the scale of valence_band_offset, common to all materials of one structure; in a "
+        "study they count from the lowest conduction band edge of the stack",
+        width, 2, 4);
   if (recalled) text += wrapped("r: recalled from memory of the source, not read in print", width, 2, 4);
   if (environment.substrate) {
     const StrainState strain = table.strain(alloy, environment);
@@ -179,7 +194,14 @@ int show_alloy(const Request& request, const MaterialTable& table, const Alloy& 
                                   significant(strain.critical_thickness_superlattice, 3)),
                       width, 2, 4);
   }
-  text += numbered("Remarks", remarks, "(", ")", width) + numbered("Sources", sources, "[", "]", width);
+  text += numbered("Remarks", remarks, "(", ")", width);
+  if (std::any_of(remarks.begin(), remarks.end(),
+                  [](const std::string& remark) { return remark.find("also ") != std::string::npos; }))
+    text += wrapped(
+        "also: what other sources give; short names such as V01 are spelt out in "
+        "docs/reference/materials.md",
+        width, 2, 4);
+  text += numbered("Sources", sources, "[", "]", width);
   std::fputs(text.c_str(), stdout);
   std::fflush(stdout);
   print_warnings(notes, false);
@@ -200,8 +222,13 @@ int show_match(const Request& request, const MaterialTable& table) {
         stdout);
     return 0;
   }
-  std::fputs(fmt::format("{} has the lattice constant of {} at 300 K\n", alloy.text, substrate.text).c_str(),
-             stdout);
+  std::fputs(
+      std::isnan(alloy.composition())
+          ? fmt::format("of {} only its end {} has the lattice constant of {} at 300 K\n", request.operand,
+                        alloy.text, substrate.text)
+                .c_str()
+          : fmt::format("{} has the lattice constant of {} at 300 K\n", alloy.text, substrate.text).c_str(),
+      stdout);
   return 0;
 }
 

@@ -78,7 +78,7 @@ std::string layer_table(const Study& study, int width, bool all) {
   const auto faces = stack.faces();
   Table table({{"", "", Align::number},
                {"layer", "", Align::left, 16},
-               {"material", "", Align::left, 33},
+               {"material", "", Align::left, 43},
                {"thickness", "nm"},
                {"", "ML", Align::number, 0, 5},
                {"from z", "nm", Align::number, 0, 4},
@@ -136,9 +136,12 @@ std::string layer_table(const Study& study, int width, bool all) {
   if (hidden > 0)
     table.add_remark(fmt::format("... {} more; --verbose lists every layer",
                                  counted(static_cast<long long>(hidden), "layer")));
+  const bool graded = std::any_of(stack.layers.begin(), stack.layers.end(),
+                                  [](const Layer& layer) { return layer.grading.has_value(); });
   return "Layers, from the substrate up\n" + table.text(width) +
          (study.field != 0 ? wrapped("band edge: of the conduction band, without the field", width, 2, 4)
-                           : "");
+                           : "") +
+         (graded ? wrapped("graded layers: the values of their bottom face", width, 2, 4) : "");
 }
 
 std::string value_table(const Study& study, int width) {
@@ -167,22 +170,23 @@ std::string strain_table(const Study& study, int width) {
                {"", "", Align::left}});
   for (const auto& row : report.rows) {
     const Layer& layer = stack.layers[static_cast<std::size_t>(row.layer)];
-    table.add({layer.label(row.layer + 1), layer.material.text,
-               fmt::format("{:.3f}", row.state.in_plane * 100),
-               fmt::format("{:.3f}", row.state.along_growth * 100), fmt::format("{:.2f}", row.run),
-               std::isfinite(row.critical) ? significant(row.critical, 3) : "-",
-               row.over ? "thicker than critical" : ""});
+    table.add(
+        {layer.label(row.layer + 1), layer.material.text, fmt::format("{:.3f}", row.state.in_plane * 100),
+         fmt::format("{:.3f}", row.state.along_growth * 100), fmt::format("{:.2f}", row.run),
+         std::isfinite(row.critical) ? significant(row.critical, 3) : "-", row.over ? "over critical" : ""});
   }
   std::string mean = fmt::format("mean in-plane strain {:.4f} %", report.mean_strain * 100);
   if (std::isfinite(report.stress_weighted_strain))
     mean += fmt::format(", weighted with the stiffness {:.4f} % (0 when balanced)",
                         report.stress_weighted_strain * 100);
+  const bool known = std::any_of(report.rows.begin(), report.rows.end(),
+                                 [](const auto& row) { return std::isfinite(row.critical); });
   return head + table.text(width) + wrapped(mean, width, 2, 4) +
-         wrapped(
-             "critical: the equilibrium thickness above which the layer relaxes by dislocations (Matthews "
-             "and "
-             "Blakeslee), for a layer that is covered, on top, or part of a superlattice as it is here",
-             width, 2, 4);
+         wrapped(known ? "critical: the equilibrium thickness above which the layer relaxes by dislocations "
+                         "(Matthews and Blakeslee), for a layer that is covered, on top, or part of a "
+                         "superlattice as it is here"
+                       : "critical: not computed for wurtzite layers",
+                 width, 2, 4);
 }
 
 }  // namespace wellwright::cli

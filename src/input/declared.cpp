@@ -4,6 +4,7 @@
 
 #include <fmt/format.h>
 
+#include <algorithm>
 #include <cassert>
 
 namespace wellwright {
@@ -19,6 +20,22 @@ std::string in_words(std::string_view path) {
   std::string text(path);
   for (auto at = text.find("[]"); at != std::string::npos; at = text.find("[]")) text.erase(at, 2);
   return fmt::format("under `{}`", text);
+}
+
+// What is probably meant by a key that is none, apart from misspellings; empty when there is no telling.
+std::string meant_by(const std::string& word, const std::vector<std::string>& known,
+                     const std::vector<const KeyDeclaration*>& declared) {
+  const auto blank = word.find(' ');
+  if (blank != std::string::npos &&
+      std::find(known.begin(), known.end(), word.substr(0, blank)) != known.end())
+    return fmt::format("a colon stands behind a key: `{}: {}`", word.substr(0, blank),
+                       word.substr(blank + 1));
+  if (!word.empty() && word[0] >= '0' && word[0] <= '9')
+    return "a comma begins another key; write decimals with a point, such as 5.5 nm";
+  for (const KeyDeclaration* key : declared)
+    if (std::find(key->other_names.begin(), key->other_names.end(), word) != key->other_names.end())
+      return fmt::format("write `{}`: {}", last_part(key->path), key->sentence);
+  return {};
 }
 
 }  // namespace
@@ -75,9 +92,13 @@ void Declarations::check(const Node& map, std::string_view path) const {
     full += entry.key;
     const auto found = entry.key.find('.') == std::string::npos ? index_.find(full) : index_.end();
     if (found == index_.end()) {
-      std::string hint;
+      std::vector<const KeyDeclaration*> declared;
+      for (const auto& key : known) declared.push_back(&at(full.substr(0, stem) + key));
+      std::string hint = meant_by(entry.key, known, declared);
       const auto near = nearest(entry.key, known);
-      if (!near.empty()) {
+      if (!hint.empty()) {
+        // found above
+      } else if (!near.empty()) {
         hint = did_you_mean(near);
       } else {
         for (const auto& key : keys_)

@@ -141,7 +141,7 @@ void set_value(Node& study, const std::string& path, const std::string& text) {
     next = 2;
     if (next == parts.size())
       throw InputError(fmt::format("`{}` names a layer but no value of it", path), place,
-                       fmt::format("write {}.thickness", path));
+                       fmt::format("write {0}.thickness or {0}.material", path));
   }
   for (; next < parts.size(); ++next) {
     if (!at->is_map())

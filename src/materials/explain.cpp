@@ -10,6 +10,10 @@
 namespace wellwright {
 namespace {
 
+// Laws of temperature are fitted to measurements that end far below the melting points; devices work below
+// this [K] (common practice).
+constexpr double hottest = 1000;
+
 bool is_law(P p) {
   switch (p) {
     case P::band_gap_alpha:
@@ -159,6 +163,11 @@ void MaterialTable::warn(const Alloy& alloy, const Environment& environment, Not
   if (alloy.is_medium()) return;
   const auto ends = binaries_of(*data_, alloy);
   const Values v = values_of(*data_, alloy, environment.temperature);
+  if (environment.temperature > hottest)
+    notes.warn(
+        fmt::format("at {:g} K the laws of gap and lattice constant reach far beyond the measurements they "
+                    "are fitted to",
+                    environment.temperature));
   if (structure_of_alloy(*data_, alloy) == Structure::zinc_blende) {
     const double gamma = at(v, P::band_gap), x = at(v, P::x_gap), l = at(v, P::l_gap);
     const double lowest = std::fmin(x, l);

@@ -68,6 +68,18 @@ std::string with_example_fractions(const std::vector<Part>& parts) {
   return text;
 }
 
+// The same with what people write besides taken away: blanks, underscores, a decimal comma; empty where that
+// is no formula either.
+std::string tidied(std::string_view text) {
+  std::string tidy;
+  for (const char c : text)
+    if (c == ',')
+      tidy += '.';
+    else if (c != ' ' && c != '_' && c != '(' && c != ')')
+      tidy += c;
+  return tidy != text && !parts_of(tidy).empty() ? tidy : std::string{};
+}
+
 Alloy from_parts(std::string_view text, const std::vector<Part>& parts, const Place& place) {
   Alloy alloy;
   alloy.text = text;
@@ -88,8 +100,9 @@ Alloy from_parts(std::string_view text, const std::vector<Part>& parts, const Pl
           fmt::format("{} lacks fractions", text), place,
           fmt::format("write them behind the elements, such as {}", with_example_fractions(parts)));
     if (!(part.fraction >= 0 && part.fraction <= 1))
-      throw InputError(fmt::format("in {} the fraction {:g} lies outside 0 to 1", text, part.fraction),
-                       place);
+      throw InputError(
+          fmt::format("in {} the fraction {:g} lies outside 0 to 1", text, part.fraction), place,
+          fmt::format("write parts of one, not per cent, such as {}", with_example_fractions(parts)));
     fraction = part.fraction;
     sum[s] += part.fraction;
     if (alloy.first < 0 && members[s] > 1) alloy.first = part.element;
@@ -136,7 +149,8 @@ Alloy MaterialTable::alloy(std::string_view text, const Place& place) const {
   }
   const auto parts = parts_of(text);
   if (parts.empty()) {
-    const auto near = nearest(text, names());
+    const std::string tidy = tidied(text);
+    const auto near = tidy.empty() ? nearest(text, names()) : std::vector<std::string>{tidy};
     throw InputError(fmt::format("`{}` is no material of the table", text), place,
                      near.empty()
                          ? "write an alloy such as Al0.3Ga0.7As, or define the medium under materials:"
@@ -168,9 +182,21 @@ Alloy MaterialTable::alloy(std::string_view text, const Place& place) const {
 Alloy MaterialTable::lattice_matched(std::string_view ternary, const Alloy& substrate,
                                      const Place& place) const {
   const AlloyRecord* record = data_->alloy_record(ternary);
-  if (!record)
+  if (!record) {
+    std::string bare;  // without its fractions
+    for (const char c : ternary)
+      if (!(c >= '0' && c <= '9') && c != '.') bare += c;
+    std::vector<std::string> ternaries;
+    for (const AlloyRecord& known : data_->alloys) ternaries.emplace_back(known.name);
+    const auto near = nearest(ternary, ternaries);
+    const bool binary = std::any_of(data_->binaries.begin(), data_->binaries.end(),
+                                    [&](const Binary& b) { return b.name == ternary; });
     throw InputError(fmt::format("`{}` is no ternary of the table", ternary), place,
-                     "write it without fractions, such as InGaAs");
+                     binary ? "a binary has one lattice constant; name a ternary, such as InGaAs"
+                     : data_->alloy_record(bare) ? fmt::format("write it without fractions: {}", bare)
+                     : near.empty()              ? "one of: " + listed(ternaries)
+                                                 : did_you_mean(near));
+  }
   constexpr double room = 300;  // a substrate is matched at room temperature [K]
   const double wanted = at(values_of(*data_, substrate, room), P::lattice_constant);
   const Binary &from = data_->binaries[static_cast<std::size_t>(record->from)],
@@ -193,13 +219,19 @@ Alloy MaterialTable::lattice_matched(std::string_view ternary, const Alloy& subs
   if (!std::isfinite(miss(0)) || miss(0) * miss(1) > 0)
     throw InputError(fmt::format("no composition of {} has the lattice constant of {}, {:.5f} nm", ternary,
                                  substrate.text, wanted),
-                     place);
+                     place,
+                     std::isfinite(miss(0)) ? fmt::format("{} has {:.5f} nm and {} has {:.5f} nm", from.name,
+                                                          miss(0) + wanted, to.name, miss(1) + wanted)
+                                            : std::string{});
   const bool rising = miss(1) > 0;
   for (int i = 0; i < 60; ++i) {
     const double middle = 0.5 * (low + high);
     ((miss(middle) > 0) == rising ? high : low) = middle;
   }
-  Alloy alloy = alloy_at(0.5 * (low + high));
+  const double x = 0.5 * (low + high);
+  constexpr double at_an_end = 5e-5;  // what four digits of a fraction would round away
+  if (x < at_an_end || x > 1 - at_an_end) return alloy(x < at_an_end ? from.name : to.name, place);
+  Alloy alloy = alloy_at(x);
   for (const int element : elements) {
     const double part = alloy.fraction[static_cast<std::size_t>(element)];
     alloy.text += element_names[static_cast<std::size_t>(element)];

@@ -264,6 +264,11 @@ bool read_quantity(std::string_view whole, const std::vector<Dimension>& allowed
     trouble.hint = "write Å or angstrom for the length";
     return false;
   }
+  if (normalised == "C" && is_one_of(Dimension::temperature, allowed)) {
+    trouble.what = "`C` is the coulomb";
+    trouble.hint = "write degC for degrees Celsius, or K";
+    return false;
+  }
   if (const std::string near = other_case(normalised, allowed); !near.empty()) {
     trouble.what = fmt::format("`{}` is not {}", unit, wanted(allowed));
     trouble.hint = fmt::format("did you mean `{}`?", near);
