@@ -28,7 +28,7 @@ struct Place {
 class InputError : public std::runtime_error {
  public:
   InputError(std::string sentence, Place place, std::string hint = {});
-  InputError(std::string sentence, Place place, Place other, std::string hint = {});
+  InputError(std::string sentence, Place place, const Place& other, std::string hint = {});
   const std::string& sentence() const { return sentence_; }
   const Place& place() const { return place_; }
   const std::string& hint() const { return hint_; }

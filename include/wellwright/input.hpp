@@ -15,7 +15,8 @@
 
 namespace wellwright {
 
-/// A value of a YAML file with its place. Maps keep the order of the file.
+/// A value of a YAML file with its place. Maps keep the order of the file. Copies share what they hold until
+/// one of them is changed, so that an alias costs nothing however much it names.
 class Node {
  public:
   enum class Kind { absent, null, scalar, sequence, map };
@@ -27,11 +28,11 @@ class Node {
   bool is_sequence() const { return kind_ == Kind::sequence; }
   bool is_scalar() const { return kind_ == Kind::scalar; }
 
-  const Place& place() const { return place_; }                   ///< of the value
-  const std::string& text() const { return text_; }               ///< of a scalar, as written
-  bool quoted() const { return quoted_; }                         ///< the scalar stood in quotes
-  const std::vector<Entry>& entries() const { return entries_; }  ///< of a map
-  const std::vector<Node>& items() const { return items_; }       ///< of a sequence
+  const Place& place() const { return place_; }      ///< of the value
+  const std::string& text() const { return text_; }  ///< of a scalar, as written
+  bool quoted() const { return quoted_; }            ///< the scalar stood in quotes
+  const std::vector<Entry>& entries() const;         ///< of a map
+  const std::vector<Node>& items() const;            ///< of a sequence
 
   /// The value under `key`, or an absent node.
   const Node& operator[](std::string_view key) const;
@@ -57,16 +58,16 @@ class Node {
   static Node make_map(std::vector<Entry> entries, Place place);
   static Node make_null(Place place);
   Place& mutable_place() { return place_; }
-  std::vector<Entry>& mutable_entries() { return entries_; }
-  std::vector<Node>& mutable_items() { return items_; }
+  std::vector<Entry>& mutable_entries();
+  std::vector<Node>& mutable_items();
 
  private:
   Kind kind_ = Kind::absent;
   Place place_;
   std::string text_;
   bool quoted_ = false;
-  std::vector<Entry> entries_;
-  std::vector<Node> items_;
+  std::shared_ptr<std::vector<Entry>> entries_;  // none: empty
+  std::shared_ptr<std::vector<Node>> items_;
 };
 
 struct Node::Entry {

@@ -64,7 +64,7 @@ InputError::InputError(std::string sentence, Place place, std::string hint)
       place_(std::move(place)),
       hint_(std::move(hint)) {}
 
-InputError::InputError(std::string sentence, Place place, Place other, std::string hint)
+InputError::InputError(std::string sentence, Place place, const Place& other, std::string hint)
     : std::runtime_error(message(sentence, place, &other, hint)),
       sentence_(std::move(sentence)),
       place_(std::move(place)),

@@ -11,6 +11,7 @@ namespace {
 
 constexpr std::size_t longest_kept = 400;  // bytes of a line kept with each place
 constexpr std::size_t kept_before = 160;   // of which before the place
+constexpr std::size_t stride = 256;        // bytes between counts of characters
 
 bool continues(char c) {
   return (static_cast<unsigned char>(c) & 0xC0u) == 0x80u;
@@ -36,7 +37,19 @@ Lines::Lines(std::string_view text, std::string file) : file_(std::move(file)) {
   starts_.push_back(0);
   for (std::size_t i = 0; i < text_.size(); ++i)
     if (text_[i] == '\n') starts_.push_back(i + 1);
+  std::size_t count = 0;
+  for (std::size_t i = 0; i < text_.size(); ++i) {
+    if (i % stride == 0) counted_.push_back(count);
+    count += continues(text_[i]) ? 0 : 1;
+  }
+  counted_.push_back(count);
   check();
+}
+
+std::size_t Lines::characters_before(std::size_t byte) const {
+  const std::size_t block = byte / stride, from = block * stride;
+  return counted_[block] +
+         static_cast<std::size_t>(characters(std::string_view(text_).substr(from, byte - from)));
 }
 
 std::string_view Lines::line(int number) const {
@@ -52,7 +65,9 @@ Place Lines::place(int number, std::size_t byte, int length) const {
   Place place;
   place.file = file_;
   place.line = std::clamp(number, 0, static_cast<int>(starts_.size()) - 1) + 1;
-  place.column = characters(whole.substr(0, byte)) + 1;
+  const auto start = static_cast<std::size_t>(whole.data() - text_.data());
+  const std::size_t before_line = characters_before(start);
+  place.column = static_cast<int>(characters_before(start + byte) - before_line) + 1;
   place.length = std::max(1, length);
   std::size_t first = 0, last = whole.size();
   if (last > longest_kept) {
@@ -61,7 +76,7 @@ Place Lines::place(int number, std::size_t byte, int length) const {
     last = std::min(last, first + longest_kept);
     while (last < whole.size() && continues(whole[last])) --last;
   }
-  place.skipped = characters(whole.substr(0, first));
+  place.skipped = static_cast<int>(characters_before(start + first) - before_line);
   place.line_text = std::string(whole.substr(first, last - first));
   return place;
 }

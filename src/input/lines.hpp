@@ -24,9 +24,13 @@ class Lines {
  private:
   void check() const;
   std::string_view line(int number) const;
+  // Characters of the text before a byte; counting them from the beginning of the line would take a time that
+  // grows with the square of a line's length.
+  std::size_t characters_before(std::size_t byte) const;
 
   std::string text_, file_;
   std::vector<std::size_t> starts_;
+  std::vector<std::size_t> counted_;  // characters before every `stride`-th byte
 };
 
 /// Characters (not bytes) of UTF-8 text.

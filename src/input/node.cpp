@@ -51,17 +51,44 @@ Place part_of(const Node& node, std::size_t offset) {
   return place;
 }
 
+// What a copy holds of its own from now on.
+template <class T>
+std::vector<T>& own(std::shared_ptr<std::vector<T>>& held) {
+  if (!held)
+    held = std::make_shared<std::vector<T>>();
+  else if (held.use_count() > 1)
+    held = std::make_shared<std::vector<T>>(*held);
+  return *held;
+}
+
 }  // namespace
+
+const std::vector<Node::Entry>& Node::entries() const {
+  static const std::vector<Entry> none;
+  return entries_ ? *entries_ : none;
+}
+
+const std::vector<Node>& Node::items() const {
+  static const std::vector<Node> none;
+  return items_ ? *items_ : none;
+}
+
+std::vector<Node::Entry>& Node::mutable_entries() {
+  return own(entries_);
+}
+std::vector<Node>& Node::mutable_items() {
+  return own(items_);
+}
 
 const Node& Node::operator[](std::string_view key) const {
   static const Node absent;
-  for (const Entry& entry : entries_)
+  for (const Entry& entry : entries())
     if (entry.key == key) return entry.value;
   return absent;
 }
 
 const Place& Node::key_place(std::string_view key) const {
-  for (const Entry& entry : entries_)
+  for (const Entry& entry : entries())
     if (entry.key == key) return entry.key_place;
   return place_;
 }
@@ -125,7 +152,7 @@ double Node::quantity(std::string_view name, Dimension dimension) const {
 }
 
 void Node::only_keys(const std::vector<std::string>& allowed, std::string_view where) const {
-  for (const Entry& entry : entries_) {
+  for (const Entry& entry : entries()) {
     if (std::find(allowed.begin(), allowed.end(), entry.key) != allowed.end()) continue;
     const auto near = nearest(entry.key, allowed);
     throw InputError(fmt::format("unknown key {} {}", shown(entry.key), where), entry.key_place,
@@ -145,7 +172,7 @@ Node Node::make_scalar(std::string text, Place place, bool quoted) {
 Node Node::make_sequence(std::vector<Node> items, Place place) {
   Node node;
   node.kind_ = Kind::sequence;
-  node.items_ = std::move(items);
+  node.items_ = std::make_shared<std::vector<Node>>(std::move(items));
   node.place_ = std::move(place);
   return node;
 }
@@ -153,7 +180,7 @@ Node Node::make_sequence(std::vector<Node> items, Place place) {
 Node Node::make_map(std::vector<Entry> entries, Place place) {
   Node node;
   node.kind_ = Kind::map;
-  node.entries_ = std::move(entries);
+  node.entries_ = std::make_shared<std::vector<Entry>>(std::move(entries));
   node.place_ = std::move(place);
   return node;
 }
