@@ -3,6 +3,7 @@
 #include <fmt/format.h>
 
 #include <algorithm>
+#include <cmath>
 
 #include "input/lines.hpp"
 #include "wellwright/input.hpp"
@@ -76,7 +77,7 @@ Node& find_layer(Node& study, const std::string& address, const Place& place) {
       return *layer.node;
   }
   if (by_number) {
-    if (wanted >= 1 && wanted < number && wanted == static_cast<int>(wanted))
+    if (wanted >= 1 && wanted < number && wanted == std::floor(wanted))
       throw InputError(fmt::format("layer {} is one of the copies of a repeat", address), place,
                        "a setting reaches all copies together: give the layer a name and use that");
     throw InputError(
