@@ -4,6 +4,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <set>
 
 #include "materials/data.hpp"
 
@@ -108,6 +109,36 @@ void override_binary(MaterialTable::Data& data, Binary& binary, const Written& w
   data.overrides.push_back(edge);
 }
 
+// A binary is found by its elements: one of group III and one of group V, or one of group IV for diamond.
+void check_binary_name(const Node::Entry& entry, Structure structure) {
+  const std::vector<int> elements = elements_of(entry.key);
+  constexpr int first_of_group_five = 3, first_of_group_four = 7;
+  const bool known = structure == Structure::diamond
+                         ? elements.size() == 1 && elements[0] >= first_of_group_four
+                         : elements.size() == 2 && elements[0] < first_of_group_five &&
+                               elements[1] >= first_of_group_five && elements[1] < first_of_group_four;
+  if (!known)
+    throw InputError(fmt::format("`{}` is no binary", entry.key), entry.key_place,
+                     structure == Structure::diamond
+                         ? "a diamond structure has one element: Si or Ge"
+                         : "write Al, Ga or In and then N, P, As or Sb, such as GaAs");
+}
+
+// An alloy is found by its elements, which are those of two binaries with one sublattice in common.
+void check_alloy_name(const Node::Entry& entry, const Binary& from, const Binary& to) {
+  std::vector<int> elements = elements_of(entry.key);
+  std::sort(elements.begin(), elements.end());
+  const std::set<int> joined = {from.cation, from.anion, to.cation, to.anion};
+  const std::size_t wanted = from.structure == Structure::diamond ? 2 : 3;
+  if (from.structure != to.structure || joined.size() != wanted)
+    throw InputError(fmt::format("{} and {} make no alloy", from.name, to.name), entry.key_place,
+                     "its ends have one structure and differ in one element");
+  if (!std::equal(elements.begin(), elements.end(), joined.begin(), joined.end()))
+    throw InputError(
+        fmt::format("`{}` does not name the elements of {} and {}", entry.key, from.name, to.name),
+        entry.key_place);
+}
+
 }  // namespace
 
 MaterialTable::MaterialTable() : data_(shipped()) {}
@@ -115,7 +146,15 @@ MaterialTable::MaterialTable() : data_(shipped()) {}
 MaterialTable MaterialTable::from_yaml(const Node& root) {
   auto owned = std::make_shared<OwnedTable>();
   read_tables({root}, *owned);
+  auto binary = owned->binaries.begin();
+  for (const Node::Entry& entry : root["binaries"].entries()) check_binary_name(entry, (binary++)->structure);
   auto data = std::make_shared<Data>(Data::build(owned->view("")));
+  auto alloy = data->alloys.begin();
+  for (const Node::Entry& entry : root["alloys"].entries()) {
+    const AlloyRecord& record = *alloy++;
+    check_alloy_name(entry, data->binaries[static_cast<std::size_t>(record.from)],
+                     data->binaries[static_cast<std::size_t>(record.to)]);
+  }
   data->owner = owned;
   std::uint64_t hash = 1469598103934665603ull;  // FNV-1a over the texts and numbers
   const auto mix = [&](std::string_view text) {

@@ -184,6 +184,36 @@ TEST_CASE("The compiled table is what its files say") {
   }
 }
 
+TEST_CASE("A table of the user names its materials by their elements") {
+  const auto trouble_of_table = [](const std::string& yaml) {
+    return trouble([&] { MaterialTable::from_yaml(read_yaml(yaml, "materials.yaml")); });
+  };
+  const auto binary = [](const char* name, const char* structure) {
+    return std::string(name) + ": {structure: " + structure +
+           ", values: {band_gap: {value: 1 eV, source: derived}}}";
+  };
+  CHECK(trouble_of_table("binaries: {" + binary("GaAs", "zinc blende") + ", " + binary("Si", "diamond") + "}")
+            .empty());
+  for (const char* name : {"Foo", "Ga", "AsGa", "GaAsP", "AlGaAs", "Si"})
+    CHECK(trouble_of_table("binaries: {" + binary(name, "zinc blende") + "}").find("is no binary") !=
+          std::string::npos);
+  for (const char* name : {"Ga", "SiGe", "GaAs"})
+    CHECK(trouble_of_table("binaries: {" + binary(name, "diamond") + "}").find("is no binary") !=
+          std::string::npos);
+  const auto alloy_of = [&](const char* alloy) {
+    return trouble_of_table("binaries: {" + binary("GaAs", "zinc blende") + ", " +
+                            binary("AlAs", "zinc blende") + ", " + binary("InP", "zinc blende") + ", " +
+                            binary("GaN", "wurtzite") + ", " + binary("Si", "diamond") + ", " +
+                            binary("Ge", "diamond") + "}\nalloys: {" + alloy + "}");
+  };
+  CHECK(alloy_of("AlGaAs: {from: GaAs, to: AlAs}, SiGe: {from: Si, to: Ge}").empty());
+  CHECK(alloy_of("Bar: {from: GaAs, to: AlAs}").find("does not name") != std::string::npos);
+  CHECK(alloy_of("AlInAs: {from: GaAs, to: AlAs}").find("does not name") != std::string::npos);
+  CHECK(alloy_of("GaAs: {from: GaAs, to: GaAs}").find("make no alloy") != std::string::npos);
+  CHECK(alloy_of("InGaAsP: {from: GaAs, to: InP}").find("make no alloy") != std::string::npos);
+  CHECK(alloy_of("GaAsN: {from: GaAs, to: GaN}").find("make no alloy") != std::string::npos);
+}
+
 TEST_CASE("Warnings say what the Gamma electron leaves out and which values are doubtful") {
   Notes notes;
   table.warn(alloy(table, "Al0.6Ga0.4As"), at(300), notes);
