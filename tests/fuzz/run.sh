@@ -1,6 +1,6 @@
 #!/usr/bin/env bash
 # SPDX-License-Identifier: Apache-2.0
-# Runs the fuzz target for SECONDS (60), beginning from the examples and the recorded mistakes.
+# Runs the fuzz target for SECONDS (60), beginning from the examples, the recorded mistakes and tests/fuzz/seeds.
 #   bash tests/fuzz/run.sh [SECONDS]
 set -eu
 top=$(cd "$(dirname "${BASH_SOURCE[0]}")/../.." && pwd)
@@ -16,6 +16,7 @@ for study in "$top"/examples/*/study.yaml; do cp "$study" "$seeds/$(basename "$(
 for case in "$top"/tests/words/*/*.txt; do  # the study of a recorded mistake
   awk '/^== /{inside = ($0 == "== file study.yaml"); next} inside' "$case" > "$seeds/$(basename "$case")"
 done
+cp "$top"/tests/fuzz/seeds/*.yaml "$seeds"  # settings and tables of a user, which no example has
 cd "$top/build-fuzz"
 log=$top/build-fuzz/fuzz.log
 if ! tests/fuzz/fuzz_study -max_total_time="${1:-60}" -max_len=4096 -timeout=10 -rss_limit_mb=2048 \
