@@ -22,6 +22,14 @@ struct Filled {
 double subband_density(const Eigen::VectorXd& k, const Eigen::VectorXd& above, double filling,
                        double temperature);
 
+/// Exchange-correlation potential and its derivative in the density [eV], [eV nm^3].
+struct LocalExchange {
+  double potential = 0, derivative = 0;
+};
+/// Hedin and Lundqvist at a density [nm^-3] with the local mass [m0] and relative permittivity; zero below
+/// 1e-12 nm^-3.
+LocalExchange hedin_lundqvist(double density, double mass, double permittivity);
+
 /// One step of the self-consistent loop.
 struct ChargeStep {
   double change = 0;       ///< largest change of a level [eV]
@@ -41,5 +49,10 @@ struct Charge {
   std::vector<ChargeStep> history;
   bool converged = true;
 };
+
+/// Fills the study's levels and, with `charge: self-consistent`, makes levels and potential agree to 2e-8 eV.
+/// The levels used are those of a grid of its own, as many as hold charge. `converged` is false when the loop
+/// did not settle. Throws NotConverged, Stopped.
+Charge solve_charge(const Study& study, const Progress& progress = {});
 
 }  // namespace wellwright

@@ -43,9 +43,14 @@ struct Levels {
   Eigen::MatrixXd moment(const Eigen::VectorXd& g) const;
 };
 
-/// Solves the study's level request for one carrier, refining until the estimate meets `accuracy`.
-/// Throws NotConverged, Stopped.
-Levels solve_levels(const Study& study, Carrier carrier, Notes& notes, const Progress& progress);
+/// Solves the study's level request for one carrier in `potential`, refining until the estimate meets
+/// `accuracy`. Throws NotConverged, Stopped.
+Levels solve_levels(const Study& study, Carrier carrier, Notes& notes, const Progress& progress,
+                    const Potential& potential = {});
+
+/// The lowest `count` levels of a profile on its own grid, without refinement or certificate; from `near`,
+/// levels of a neighbouring profile on the same grid, where given and close enough. Throws NotConverged.
+Levels levels_on_profile(const Profile& profile, int count, const Levels* near = nullptr);
 
 /// The lowest `count` levels above every valence edge on one given grid, without refinement [eV]; for tables
 /// of the order of convergence. Throws NotConverged.

@@ -66,6 +66,7 @@ struct BandParameters {
   double heavy_hole_mass = 0, heavy_hole_in_plane_mass = 0;  ///< [m0]
   double light_hole_mass = 0, light_hole_in_plane_mass = 0;  ///< [m0]
   double permittivity = 0;                                   ///< static, relative
+  double polarization = 0;  ///< spontaneous and piezoelectric, along +z of the stack [nm^-2, in units of e]
 };
 
 /// Conditions under which an alloy is resolved.

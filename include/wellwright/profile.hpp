@@ -50,8 +50,15 @@ struct MaterialDerivative {
   Eigen::MatrixXd b, v;
 };
 
-/// The profile of `carrier` on `grid`.
-Profile make_profile(const Study& study, Carrier carrier, const Grid& grid);
+/// The profile of `carrier` on `grid`, with `potential` in every band.
+Profile make_profile(const Study& study, Carrier carrier, const Grid& grid, const Potential& potential = {});
+/// Adds a potential energy of electrons and their exchange-correlation energy [eV], at the element-local
+/// nodes of the profile's grid, to all its bands; holes see the first with the sign turned and not the
+/// second.
+void add_potential(Profile& profile, const Eigen::VectorXd& energy,
+                   const Eigen::VectorXd& exchange_correlation);
+/// The cuts of a grid that follows these layer faces.
+std::vector<std::vector<double>> cuts_of(const Grid& grid, const std::vector<double>& faces);
 
 /// Derivatives of the coefficients, by central differences of sixth order of the material table's smooth
 /// functions (relative error about 1e-11). The zero of energy and the reference gap of `offset_ratio` stay
@@ -89,6 +96,6 @@ struct EdgeProfile {
   Eigen::VectorXd conduction_band_edge, heavy_hole_band_edge, light_hole_band_edge;  ///< [eV], field included
   Eigen::VectorXd donor_density, acceptor_density;                                   ///< [nm^-3]
 };
-EdgeProfile edge_profile(const Study& study, const Grid& grid);
+EdgeProfile edge_profile(const Study& study, const Grid& grid, const Potential& potential = {});
 
 }  // namespace wellwright

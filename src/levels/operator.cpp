@@ -40,10 +40,10 @@ SearchFloor prepare(Profile& profile) {
 
 }  // namespace
 
-Operator::Operator(const Study& study, Carrier carrier, const Grid& grid)
-    : profile(make_profile(study, carrier, grid)),
-      floor(prepare(profile)),
-      hamiltonian(profile),
-      factors(hamiltonian) {}
+Operator::Operator(Profile whole)
+    : profile(std::move(whole)), floor(prepare(profile)), hamiltonian(profile), factors(hamiltonian) {}
+
+Operator::Operator(const Study& study, Carrier carrier, const Grid& grid, const Potential& potential)
+    : Operator(make_profile(study, carrier, grid, potential)) {}
 
 }  // namespace wellwright

@@ -17,7 +17,8 @@ struct SearchFloor {
 
 /// One grid's operator. Not movable: the parts point at each other.
 struct Operator {
-  Operator(const Study& study, Carrier carrier, const Grid& grid);
+  explicit Operator(Profile whole);
+  Operator(const Study& study, Carrier carrier, const Grid& grid, const Potential& potential = {});
   Operator(const Operator&) = delete;
   Operator& operator=(const Operator&) = delete;
 

@@ -33,8 +33,14 @@ struct Range {
 
 class Solver {
  public:
-  Solver(const Study& study, Carrier carrier, Notes& notes, const Progress& progress)
-      : study_(study), carrier_(carrier), notes_(notes), progress_(progress), request_(study.model.levels) {}
+  Solver(const Study& study, Carrier carrier, Notes& notes, const Progress& progress,
+         const Potential& potential)
+      : study_(study),
+        carrier_(carrier),
+        notes_(notes),
+        progress_(progress),
+        potential_(potential),
+        request_(study.model.levels) {}
 
   Levels run() {
     divide();
@@ -51,6 +57,12 @@ class Solver {
  private:
   // The first division and the range of levels, on the lowest degree.
   void divide() {
+    if (!potential_.empty()) {  // a polynomial on its own elements only
+      cuts_ = cuts_of(potential_.grid, study_.stack.faces());
+      build(first_degree);
+      find_range();
+      return;
+    }
     double top = request_.below ? *request_.below : guessed_top(study_, carrier_, request_.count.value_or(6));
     for (int attempt = 0; attempt < 4; ++attempt) {
       cuts_ = first_cuts(study_, carrier_, top);
@@ -65,7 +77,7 @@ class Solver {
   void build(int degree) {
     const Grid grid = make_grid(study_.stack.faces(), cuts_, degree);
     if (grid.rows() > most_rows) throw NotConverged("the grid that these levels need is too large");
-    op_ = std::make_unique<Operator>(study_, carrier_, grid);
+    op_ = std::make_unique<Operator>(study_, carrier_, grid, potential_);
     base_ = op_->floor.broken_gap ? levels_below(op_->factors, op_->floor.energy) : 0;
     if (progress_ &&
         !progress_(std::min(0.9, 0.1 * (degree - first_degree) / degree_step + 0.2 * halvings_), "levels"))
@@ -335,6 +347,7 @@ class Solver {
   Carrier carrier_;
   Notes& notes_;
   const Progress& progress_;
+  const Potential& potential_;
   LevelRequest request_;
   std::vector<std::vector<double>> cuts_;
   std::unique_ptr<Operator> op_;
@@ -347,8 +360,27 @@ class Solver {
 
 }  // namespace
 
-Levels solve_levels(const Study& study, Carrier carrier, Notes& notes, const Progress& progress) {
-  return Solver(study, carrier, notes, progress).run();
+Levels solve_levels(const Study& study, Carrier carrier, Notes& notes, const Progress& progress,
+                    const Potential& potential) {
+  return Solver(study, carrier, notes, progress, potential).run();
+}
+
+Levels levels_on_profile(const Profile& profile, int count, const Levels* near) {
+  Operator op(profile);
+  const int base = op.floor.broken_gap ? levels_below(op.factors, op.floor.energy) : 0;
+  Pairs pairs;
+  if (near && near->count() == count) {
+    pairs.energy = near->energy;
+    pairs.psi.resize(op.hamiltonian.nodes(), count);
+    for (int i = 0; i < count; ++i) pairs.psi.col(i) = gather(profile.grid, near->envelope.col(i));
+    if (profile.ends == Ends::periodic) pairs.psi.row(op.hamiltonian.nodes() - 1) = pairs.psi.row(0);
+    Rayleigh rayleigh(op.hamiltonian, op.factors);
+    const double above = 1e-9 + 4 * rayleigh.floor();
+    if (rayleigh.polish_all(pairs) &&
+        levels_below(op.factors, pairs.energy[count - 1] + above) == base + count)
+      return assemble(op.hamiltonian, pairs);
+  }
+  return assemble(op.hamiltonian, cold_levels(op.hamiltonian, op.factors, base, count, op.floor.energy));
 }
 
 Eigen::VectorXd energies_on_grid(const Study& study, Carrier carrier, const Grid& grid, int count) {

@@ -44,14 +44,26 @@ EdgeShifts wurtzite_shifts(const Values& v, const Strain& e) {
   return {conduction, lambda, theta + lambda, half + lambda + root - zero, half + lambda - root - zero};
 }
 
+double known_or(double value, double other) {
+  return std::isfinite(value) ? value : other;
+}
+
+// Along +z in units of e: the table's constants are for [0001], the growth direction of a Ga-face layer. Source:
+// O. Ambacher et al., J. Phys. Condens. Matter 14, 3399 (2002); O. Ambacher et al., J. Appl. Phys. 85, 3222 (1999).
+double polarization_of(Structure structure, const Values& v, const Strain& e, const Environment& environment) {
+  if (structure != Structure::wurtzite && !std::isfinite(at(v, P::spontaneous_polarization))) return 0;
+  constexpr double per_area = 1e-18 / constants::elementary_charge;  // C/m^2 in e/nm^2
+  const double spontaneous = known_or(at(v, P::spontaneous_polarization), 0);
+  double piezo = 0;
+  if (e.in_plane != 0) piezo = 2 * at(v, P::e31) * e.in_plane + at(v, P::e33) * e.along;
+  const double sign = environment.growth_plane == GrowthPlane::wurtzite_000m1 ? -1 : 1;
+  return sign * per_area * (spontaneous + piezo);
+}
+
 double kane_mass(const Values& cold) {
   const double gap = at(cold, P::band_gap), so = at(cold, P::spin_orbit_splitting);
   return 1 / (1 + 2 * at(cold, P::kane_remote_bands) +
               at(cold, P::kane_energy) * (gap + 2 * so / 3) / (gap * (gap + so)));
-}
-
-double known_or(double value, double other) {
-  return std::isfinite(value) ? value : other;
 }
 
 void take_masses(const Values& v, BandParameters& b) {
@@ -78,6 +90,7 @@ BandParameters MaterialTable::resolve(const Alloy& alloy, const Environment& env
     b.electron_mass = b.electron_in_plane_mass = kane_mass(values_of(*data_, alloy, 0));
 
   const Strain e = environment.strain ? strain_of(*data_, alloy, v, environment) : Strain{};
+  b.polarization = polarization_of(structure, v, e, environment);
   const EdgeShifts shifts = structure == Structure::wurtzite ? wurtzite_shifts(v, e) : cubic_shifts(v, e);
   double valence = 0, conduction = 0;
   if (environment.offset_ratio && !alloy.is_medium()) {

@@ -43,7 +43,7 @@ void for_each_node(const Stack& stack, const Grid& grid, Use use) {
 
 }  // namespace
 
-Profile make_profile(const Study& study, Carrier carrier, const Grid& grid) {
+Profile make_profile(const Study& study, Carrier carrier, const Grid& grid, const Potential& potential) {
   Profile profile;
   profile.grid = grid;
   profile.carrier = carrier;
@@ -71,10 +71,37 @@ Profile make_profile(const Study& study, Carrier carrier, const Grid& grid) {
       at.v(row, j) = point.v[static_cast<std::size_t>(j)] + tilt;
     }
   });
+  if (!potential.empty())
+    add_potential(profile, interpolate(potential.grid, potential.energy, grid),
+                  potential.exchange_correlation.size() > 0
+                      ? Eigen::VectorXd(interpolate(potential.grid, potential.exchange_correlation, grid))
+                      : Eigen::VectorXd());
   return profile;
 }
 
-EdgeProfile edge_profile(const Study& study, const Grid& grid) {
+void add_potential(Profile& profile, const Eigen::VectorXd& energy,
+                   const Eigen::VectorXd& exchange_correlation) {
+  Eigen::VectorXd shift = energy;
+  if (profile.carrier != Carrier::electron)
+    shift = -energy;
+  else if (exchange_correlation.size() > 0)
+    shift += exchange_correlation;
+  profile.at.edge += shift;
+  profile.at.v.colwise() += shift;
+}
+
+std::vector<std::vector<double>> cuts_of(const Grid& grid, const std::vector<double>& faces) {
+  std::vector<std::vector<double>> cuts(faces.size() - 1);
+  for (int e = 1; e < grid.elements(); ++e) {
+    const auto at = static_cast<std::size_t>(e);
+    if (grid.layer[at] != grid.layer[at - 1]) continue;
+    const auto layer = static_cast<std::size_t>(grid.layer[at]);
+    cuts[layer].push_back((grid.boundaries[at] - faces[layer]) / (faces[layer + 1] - faces[layer]));
+  }
+  return cuts;
+}
+
+EdgeProfile edge_profile(const Study& study, const Grid& grid, const Potential& potential) {
   EdgeProfile edges;
   edges.grid = grid;
   for (auto* column : {&edges.conduction_band_edge, &edges.heavy_hole_band_edge, &edges.light_hole_band_edge,
@@ -86,6 +113,11 @@ EdgeProfile edge_profile(const Study& study, const Grid& grid) {
     edges.heavy_hole_band_edge[row] = parameters.heavy_hole_edge + tilt;
     edges.light_hole_band_edge[row] = parameters.light_hole_edge + tilt;
   });
+  if (!potential.empty()) {
+    const Eigen::VectorXd energy = interpolate(potential.grid, potential.energy, grid);
+    for (auto* edge : {&edges.conduction_band_edge, &edges.heavy_hole_band_edge, &edges.light_hole_band_edge})
+      *edge += energy;
+  }
   for (int row = 0; row < grid.rows(); ++row) {
     const Layer& layer =
         study.stack
