@@ -15,6 +15,7 @@ struct Filled {
   double temperature = 0;       ///< of the carriers [K]; 0 is the limit
   Eigen::VectorXd fermi_level;  ///< (level) [eV], in the carrier's own energy; one value but for `per module`
   Eigen::VectorXd sheet_density;  ///< (level), both spins [nm^-2]
+  double widest_k = 0;            ///< of the dispersion used [1/nm]
 };
 
 /// Sheet density of one subband [nm^-2] with the dispersion E(k) - E(0) sampled at `k` [1/nm], at `fermi` -
@@ -54,5 +55,11 @@ struct Charge {
 /// The levels used are those of a grid of its own, as many as hold charge. `converged` is false when the loop
 /// did not settle. Throws NotConverged, Stopped.
 Charge solve_charge(const Study& study, const Progress& progress = {});
+/// Whether the study has charge to solve: doping, polarization, pinned faces.
+bool has_charge(const Study& study);
+/// How levels of this study are filled at the Fermi levels of its charge.
+Filled fill(const Study& study, const Levels& levels, const Dispersion& dispersion, const Charge& charge);
+/// How far in k a dispersion must go so that the carriers of `charge` end inside it [1/nm].
+double widest_filled_k(const Charge& charge, Carrier carrier);
 
 }  // namespace wellwright

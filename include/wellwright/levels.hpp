@@ -3,6 +3,7 @@
 #pragma once
 
 #include <Eigen/Core>
+#include <memory>
 #include <string>
 #include <vector>
 
@@ -34,6 +35,7 @@ struct Levels {
   std::vector<Eigen::MatrixXd> companion;  ///< chi_j (element-local node, level), one a pole
   Eigen::MatrixXd layer_probability;       ///< (level, layer), all components
   Certificate certificate;
+  std::shared_ptr<const Potential> potential;  ///< in which they were solved; null: none
 
   int count() const { return static_cast<int>(energy.size()); }
   /// Probability density of all components (element-local node, level) [1/nm]: sum(weight density) = 1.

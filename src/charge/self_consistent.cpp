@@ -13,6 +13,7 @@
 #include <memory>
 #include <numbers>
 
+#include "charge/modules.hpp"
 #include "charge/poisson.hpp"
 #include "charge/subbands.hpp"
 #include "wellwright/diagnostics.hpp"
@@ -27,19 +28,6 @@ constexpr double small_share = 1e-10;   // of the charge, in the highest level: 
 constexpr double reach_kT = 28;         // exp(-28) is below small_share
 constexpr double finest = 2e-8;         // [eV] change of the levels at which the loop ends
 constexpr double warmest_start = 2e-3;  // [eV] at least, of the classical start
-
-// Modules of a stack: the copies of its repeats; layers outside join the nearest.
-std::vector<int> modules_of(const Study& study) {
-  const auto& layers = study.stack.layers;
-  std::vector<int> module(layers.size(), 0);
-  if (study.model.filling == Filling::equilibrium) return module;
-  int last = 0;
-  for (std::size_t i = 0; i < layers.size(); ++i) {
-    if (layers[i].copy > 0) last = layers[i].copy - 1;
-    module[i] = last;
-  }
-  return module;
-}
 
 class Loop {
  public:
@@ -69,7 +57,7 @@ class Loop {
       if (progress_ && !progress_(std::min(0.9, 0.06 * step), "charge")) throw Stopped();
       solve_levels_now();
       find_fermi_levels();
-      const Eigen::VectorXd now = relative_levels();
+      const Eigen::VectorXd now = charged_levels();
       const double change = last.size() == now.size() ? (now - last).cwiseAbs().maxCoeff() : NAN;
       last = now;
       charge_.history.push_back({change, fermi_[0]});
@@ -217,22 +205,11 @@ class Loop {
       const Subbands* near = c < bands_.size() ? &bands_[c] : nullptr;
       const int count = near ? near->levels.count() : std::max(6, 2 * modules_);
       fresh.push_back(subbands_of(profile, count, near, reach()));
-      note_modules(fresh.back());
+      fresh.back().module = modules_of_levels(fresh.back().levels, module_of_);
     }
     bands_ = std::move(fresh);
   }
   double reach() const { return 0.05 + reach_kT * constants::boltzmann * T_ + 2 * deepest_; }
-
-  void note_modules(Subbands& bands) const {
-    for (int i = 0; i < bands.levels.count(); ++i) {
-      Eigen::VectorXd share = Eigen::VectorXd::Zero(modules_);
-      for (Eigen::Index l = 0; l < bands.levels.layer_probability.cols(); ++l)
-        share[module_of_[static_cast<std::size_t>(l)]] += bands.levels.layer_probability(i, l);
-      Eigen::Index most = 0;
-      share.maxCoeff(&most);
-      bands.module.push_back(static_cast<int>(most));
-    }
-  }
 
   // Charge that moves, of one module [nm^-2].
   double mobile(double fermi, int module) const {
@@ -315,17 +292,17 @@ class Loop {
         std::min(most_levels, bands_[c].levels.count() + std::max(3, bands_[c].levels.count() / 3));
     deepest_ = std::max(deepest_, 0.3);
     bands_[c] = subbands_of(bands_[c].levels.profile, count, nullptr, reach());
-    bands_[c].module.clear();
-    note_modules(bands_[c]);
+    bands_[c].module = modules_of_levels(bands_[c].levels, module_of_);
   }
 
-  // Levels from their Fermi level, those that hold charge.
-  Eigen::VectorXd relative_levels() const {
+  // The levels that hold charge, and the Fermi level where it is free to move.
+  Eigen::VectorXd charged_levels() const {
     std::vector<double> all;
     for (const Subbands& bands : bands_)
       for (int i = 0; i < bands.levels.count(); ++i)
-        if (bands.filling(i, fermi_of(bands, i)) > -8 * constants::boltzmann * T_ - 1e-3 || i == 0)
-          all.push_back(bands.filling(i, fermi_of(bands, i)));
+        if (i == 0 || bands.filling(i, fermi_of(bands, i)) > -8 * constants::boltzmann * T_)
+          all.push_back(bands.levels.energy[i]);
+    all.push_back(fermi_[0]);
     return Eigen::Map<Eigen::VectorXd>(all.data(), static_cast<Eigen::Index>(all.size()));
   }
 
@@ -442,6 +419,7 @@ class Loop {
       Filled filled;
       filled.carrier = bands.levels.profile.carrier;
       filled.temperature = T_;
+      filled.widest_k = bands.dispersion.k[bands.dispersion.k.size() - 1];
       const int n = bands.levels.count();
       filled.fermi_level.resize(n);
       filled.sheet_density.resize(n);

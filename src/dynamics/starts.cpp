@@ -140,7 +140,11 @@ Started start_field_step(const FieldStepStart& start, const Study& study, const 
   } else {
     before.model.levels.count = std::max(before.model.levels.count.value_or(1), start.level);
   }
-  const Levels other = solve_levels(before, levels.profile.carrier, notes, {});
+  const Levels other = solve_levels(before, levels.profile.carrier, notes, {},
+                                    levels.potential ? *levels.potential : Potential{});
+  if (levels.potential)
+    notes.assume(
+        "the charge stays where it is while the field steps: the start is solved in the same potential");
   check_level(start.level, other, place);
   const int index = start.level - 1;
   const Grid grid = common_grid(levels.profile.grid, other.profile.grid);

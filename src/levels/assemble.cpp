@@ -166,6 +166,7 @@ Levels chosen(const Levels& levels, const std::vector<int>& indices) {
   Levels out;
   out.profile = levels.profile;
   out.certificate = levels.certificate;
+  out.potential = levels.potential;
   const auto pick = [&](const Eigen::VectorXd& all) {
     Eigen::VectorXd some(static_cast<Eigen::Index>(indices.size()));
     for (std::size_t i = 0; i < indices.size(); ++i) some[static_cast<Eigen::Index>(i)] = all[indices[i]];

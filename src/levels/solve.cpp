@@ -362,7 +362,9 @@ class Solver {
 
 Levels solve_levels(const Study& study, Carrier carrier, Notes& notes, const Progress& progress,
                     const Potential& potential) {
-  return Solver(study, carrier, notes, progress, potential).run();
+  Levels levels = Solver(study, carrier, notes, progress, potential).run();
+  if (!potential.empty()) levels.potential = std::make_shared<const Potential>(potential);
+  return levels;
 }
 
 Levels levels_on_profile(const Profile& profile, int count, const Levels* near) {
