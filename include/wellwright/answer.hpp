@@ -16,11 +16,13 @@ struct CarrierAnswer {
   std::optional<Minibands> minibands;
   Sensitivity sensitivity;
   Transitions transitions;
+  std::optional<Filled> filled;  ///< where the stack holds charge
 };
 
 struct Answer {
   Study study;
   EdgeProfile edges;
+  std::optional<Charge> charge;         ///< where the stack holds any
   std::vector<CarrierAnswer> carriers;  ///< in the order of model.carriers
   std::vector<Interband> interband;     ///< one a hole kind when electrons are there too
   std::optional<Dynamics> dynamics;     ///< of the first carrier (the electron where there is one)

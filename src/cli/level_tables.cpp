@@ -60,6 +60,12 @@ std::string group_of(const Levels& levels, int level) {
   return partners.empty() ? "" : "one energy with " + partners;
 }
 
+// "4.68e11", "0" for what is below one in a square centimetre.
+std::string sheet_text(double density) {
+  const double per_cm2 = 1e14 * density;
+  return per_cm2 < 1 ? "0" : fmt::format("{:.3e}", per_cm2);
+}
+
 }  // namespace
 
 std::string level_table(const Answer& answer, const CarrierAnswer& part, int width) {
@@ -72,13 +78,15 @@ std::string level_table(const Answer& answer, const CarrierAnswer& part, int wid
                                : ", energies on the scale of the band edges"),
               width, 0, 2);
   if (levels.count() == 0) return text + "  none in the window\n";
-  Table table({{"level", "", Align::number},
-               {"energy", "meV"},
-               {"lives in", "", Align::left, 24},
-               {"mean z", "nm"},
-               {"spread", "nm"},
-               {"mass in plane", "m0", Align::number, 0, 1},
-               {"", "", Align::left}});
+  std::vector<Column> columns{{"level", "", Align::number},
+                              {"energy", "meV"},
+                              {"lives in", "", Align::left, 24},
+                              {"mean z", "nm"},
+                              {"spread", "nm"},
+                              {"mass in plane", "m0", Align::number, 0, 1}};
+  if (part.filled) columns.push_back({"holds", "cm^-2"});
+  columns.push_back({"", "", Align::left});
+  Table table(columns);
   bool box = false;
   for (int i = 0; i < std::min(levels.count(), most_levels); ++i) {
     const double error = shown_error(answer, levels, i) * 1e3;
@@ -87,17 +95,40 @@ std::string level_table(const Answer& answer, const CarrierAnswer& part, int wid
       remark += remark.empty() ? "box" : ", box";
       box = true;
     }
-    table.add({std::to_string(i + 1), to_error(levels.energy(i) * 1e3, error),
-               home_of(answer.study, levels, i), fmt::format("{:.2f}", levels.mean_position(i)),
-               fmt::format("{:.2f}", levels.spread(i)),
-               std::isfinite(levels.in_plane_mass(i)) ? fmt::format("{:.4f}", levels.in_plane_mass(i)) : "",
-               remark});
+    std::vector<std::string> row{
+        std::to_string(i + 1),
+        to_error(levels.energy(i) * 1e3, error),
+        home_of(answer.study, levels, i),
+        fmt::format("{:.2f}", levels.mean_position(i)),
+        fmt::format("{:.2f}", levels.spread(i)),
+        std::isfinite(levels.in_plane_mass(i)) ? fmt::format("{:.4f}", levels.in_plane_mass(i)) : ""};
+    if (part.filled) row.push_back(sheet_text(part.filled->sheet_density[i]));
+    row.push_back(remark);
+    table.add(row);
   }
   if (levels.count() > most_levels)
     table.add_remark(fmt::format("... {} more in the result file", levels.count() - most_levels));
   text += table.text(width);
   if (box) text += wrapped("box: above the lower outer band edge, held by the hard ends alone", width, 2, 4);
   return text;
+}
+
+std::string charge_text(const Answer& answer, int width) {
+  if (!answer.charge) return "";
+  const Charge& charge = *answer.charge;
+  double electrons = 0, holes = 0;
+  for (const Filled& filled : charge.filled)
+    (filled.carrier == Carrier::electron ? electrons : holes) += filled.sheet_density.sum();
+  std::string text = fmt::format("Charge: {} cm^-2 of electrons", sheet_text(electrons));
+  if (charge.filled.size() > 1) text += fmt::format(", {} cm^-2 of holes", sheet_text(holes));
+  text += fmt::format(" at {:g} K, Fermi level {:.3f} meV", answer.study.carrier_temperature,
+                      charge.fermi_level * 1e3);
+  if (charge.module_fermi_level.size() > 1) text += " in the first module";
+  if (answer.study.model.self_consistent)
+    text += charge.converged ? fmt::format("; consistent with its own field after {}",
+                                           counted(static_cast<int>(charge.history.size()), "step"))
+                             : std::string("; not settled");
+  return wrapped(text + ".", width, 0, 2);
 }
 
 std::string miniband_table(const CarrierAnswer& part, int width) {

@@ -31,6 +31,7 @@ std::string summary(const Answer& answer, int width, bool all_layers) {
   };
   add(layer_table(answer.study, width, all_layers));
   for (const auto& part : answer.carriers) add(level_table(answer, part, width));
+  add(charge_text(answer, width));
   for (const auto& part : answer.carriers) add(miniband_table(part, width));
   for (const auto& part : answer.carriers) add(transition_table(answer, part, width));
   for (const auto& pairs : answer.interband) add(interband_table(answer, pairs, width));

@@ -19,6 +19,8 @@ std::string value_table(const Study& study, int width);
 std::string strain_table(const Study& study, int width);
 
 std::string level_table(const Answer& answer, const CarrierAnswer& part, int width);
+/// One sentence about the carriers and their Fermi level; empty where the stack holds no charge.
+std::string charge_text(const Answer& answer, int width);
 std::string miniband_table(const CarrierAnswer& part, int width);
 std::string transition_table(const Answer& answer, const CarrierAnswer& part, int width);
 /// Electron-hole pairs with an overlap that counts.

@@ -48,9 +48,11 @@ double known_or(double value, double other) {
   return std::isfinite(value) ? value : other;
 }
 
-// Along +z in units of e: the table's constants are for [0001], the growth direction of a Ga-face layer. Source:
-// O. Ambacher et al., J. Phys. Condens. Matter 14, 3399 (2002); O. Ambacher et al., J. Appl. Phys. 85, 3222 (1999).
-double polarization_of(Structure structure, const Values& v, const Strain& e, const Environment& environment) {
+// Along +z in units of e: the table's constants are for [0001], the growth direction of a Ga-face layer.
+// Source: O. Ambacher et al., J. Phys. Condens. Matter 14, 3399 (2002); O. Ambacher et al., J. Appl. Phys.
+// 85, 3222 (1999).
+double polarization_of(Structure structure, const Values& v, const Strain& e,
+                       const Environment& environment) {
   if (structure != Structure::wurtzite && !std::isfinite(at(v, P::spontaneous_polarization))) return 0;
   constexpr double per_area = 1e-18 / constants::elementary_charge;  // C/m^2 in e/nm^2
   const double spontaneous = known_or(at(v, P::spontaneous_polarization), 0);

@@ -44,8 +44,9 @@ void write_levels(const hdf5::Group& root, const CarrierAnswer& part) {
          {"1", "weight of the envelope in the product over all components"});
   column("mean_position", levels.mean_position, {"nm", "mean position"});
   column("spread", levels.spread, {"nm", "rms width of the probability density"});
-  column("sheet_density", unknown,
-         {"cm-2", "sheet density of carriers in the level", "NaN: charge is not computed"});
+  column("sheet_density", part.filled ? Eigen::VectorXd(per_cm2 * part.filled->sheet_density) : unknown,
+         {"cm-2", "sheet density of carriers in the level",
+          part.filled ? "both spins" : "NaN: the stack holds no charge"});
   column("in_plane_mass", levels.in_plane_mass, {"1", "in-plane mass", "in free electron masses"});
   column("level_width", unknown, {"eV", "full width of the level", "NaN: lifetimes are not computed"});
   group.write("bound", {"level"}, levels.bound,

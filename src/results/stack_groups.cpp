@@ -9,7 +9,6 @@ namespace wellwright {
 namespace {
 
 constexpr double undefined = std::numeric_limits<double>::quiet_NaN();
-constexpr double per_cm2 = 1e14;  // nm^-2
 constexpr double per_cm3 = 1e21;  // nm^-3
 
 }  // namespace
@@ -76,12 +75,40 @@ void write_profile(const hdf5::Group& root, const Answer& answer) {
   write("light_hole_band_edge", edges.light_hole_band_edge, {"eV", "light-hole band edge", axis});
   const Eigen::VectorXd zero = Eigen::VectorXd::Zero(edges.grid.rows());
   const Eigen::VectorXd unknown = Eigen::VectorXd::Constant(edges.grid.rows(), undefined);
-  write("potential", zero,
-        {"V", "electrostatic potential of the stack's own charge", "charge is not computed: zero"});
-  write("electron_density", unknown, {"cm-3", "electron density", "NaN: charge is not computed"});
-  write("hole_density", unknown, {"cm-3", "hole density", "NaN: charge is not computed"});
+  const auto from_charge = [&](const Eigen::VectorXd& values) -> Eigen::VectorXd {
+    return interpolate(answer.charge->grid, values, edges.grid);
+  };
+  const bool bends = answer.charge && !answer.charge->potential.empty();
+  write("potential", bends ? Eigen::VectorXd(-from_charge(answer.charge->potential.energy)) : zero,
+        {"V", "electrostatic potential of the stack's own charge",
+         bends ? "0 at the bottom face, applied field aside" : "left out: zero"});
+  const char* none = answer.charge ? "" : "NaN: the stack holds no charge";
+  write("electron_density",
+        answer.charge ? Eigen::VectorXd(per_cm3 * from_charge(answer.charge->electron_density)) : unknown,
+        {"cm-3", "electron density", none});
+  write("hole_density",
+        answer.charge ? Eigen::VectorXd(per_cm3 * from_charge(answer.charge->hole_density)) : unknown,
+        {"cm-3", "hole density", none});
   write("donor_density", per_cm3 * edges.donor_density, {"cm-3", "density of ionised donors"});
   write("acceptor_density", per_cm3 * edges.acceptor_density, {"cm-3", "density of ionised acceptors"});
+}
+
+void write_charge(const hdf5::Group& root, const Charge& charge) {
+  hdf5::Group group = root.child("charge");
+  group.count_axis("iteration", charge.history.size(), "step of the loop, counted from 1");
+  const auto steps = static_cast<Eigen::Index>(charge.history.size());
+  Eigen::VectorXd change(steps), fermi(steps);
+  for (Eigen::Index i = 0; i < steps; ++i) {
+    change[i] = charge.history[static_cast<std::size_t>(i)].change;
+    fermi[i] = charge.history[static_cast<std::size_t>(i)].fermi_level;
+  }
+  group.vector(
+      "change", "iteration", change,
+      {"eV", "largest change of a level that holds charge, and of the Fermi level", "NaN in the first step"});
+  group.vector("fermi_level", "iteration", fermi, {"eV", "Fermi level", "on the electron-energy axis"});
+  group.attribute("fermi_level", charge.fermi_level);
+  group.attribute("neutrality", charge.neutrality);
+  group.attribute("donor_sheet_density", per_cm2 * charge.donor_sheet_density);
 }
 
 }  // namespace wellwright

@@ -55,6 +55,7 @@ void write_all(hdf5::File& file, const Answer& answer) {
   root.attribute("default", "/" + (answer.dynamics ? std::string("dynamics") : group_of("levels", first)));
   write_layers(root, answer);
   write_profile(root, answer);
+  if (answer.charge) write_charge(root, *answer.charge);
   for (const CarrierAnswer& part : answer.carriers) write_carrier(root, part);
   for (const Interband& pairs : answer.interband) write_interband(root, pairs);
   if (!answer.dynamics) return;

@@ -273,10 +273,6 @@ Stack read_stack(const Node& root, const MaterialTable& table, Notes& notes) {
   });
   say_mixed_scales(stack, notes);
   say_strain(stack, notes);
-  if (structure && structure->structure == Structure::wurtzite)
-    notes.warn(
-        "spontaneous and piezoelectric polarization are not included yet: the fields they make in wurtzite "
-        "layers are missing");
   return stack;
 }
 

@@ -110,23 +110,7 @@ PhotoexcitedStart read_photoexcited(const Node& node, const Node& key, const Stu
   start.level = read_level(node, "dynamics.start.photoexcited.level", study.model.levels);
   const Node& energy = node["photon_energy"];
   if (energy.present()) {
-    const Quantity q =
-        energy.quantity("photon_energy", keys.at("dynamics.start.photoexcited.photon_energy").dimensions);
-    if (!(q.value > 0))
-      throw InputError("`photon_energy` is not above zero", energy.place(), "write photon_energy: 1.56 eV");
-    switch (q.dimension) {
-      case Dimension::length:
-        start.photon_energy = energy_of_wavelength(q.value);
-        break;
-      case Dimension::frequency:
-        start.photon_energy = constants::planck * q.value;
-        break;
-      case Dimension::inverse_length:
-        start.photon_energy = energy_of_wavelength(1 / q.value);
-        break;
-      default:
-        start.photon_energy = q.value;
-    }
+    start.photon_energy = photon_energy_of(energy, "photon_energy");
   }
   start.duration = keys.quantity(node, "dynamics.start.photoexcited.duration");
   if (!(start.duration > 0))

@@ -49,7 +49,8 @@ std::vector<EffectiveValue> effective_values(const Study& study) {
     const auto dot = path.rfind('.');
     const std::string parent = dot == std::string::npos ? "" : path.substr(0, dot);
     // Below `dynamics`, and below a key that may be a word or a map, only what the study opened.
-    if (parent.starts_with("dynamics") && !find(root, parent).is_map()) continue;
+    if ((parent.starts_with("dynamics") || parent.starts_with("absorption")) && !find(root, parent).is_map())
+      continue;
     if (parent.starts_with("model.") && !find(root, parent).is_map()) continue;
     const Node& value = find(root, path);
     if (value.is_map()) continue;  // its own keys follow
@@ -62,6 +63,9 @@ std::vector<EffectiveValue> effective_values(const Study& study) {
     if (path == "model.strain" && !study.stack.environment.substrate) continue;
     if (path == "model.bloch_phases" && study.model.ends != Ends::periodic) continue;
     if (path == "field" && study.bias) continue;
+    if (path == "model.polarization" && study.stack.environment.growth_plane == GrowthPlane::zinc_blende_001)
+      continue;
+    if (path == "model.exchange_correlation" && !study.model.self_consistent) continue;
     if (path == "model.levels.count" && study.model.levels.in_layers.empty()) continue;
     values.push_back({path, key.default_text, true, false});
   }

@@ -115,6 +115,33 @@ std::vector<std::pair<int, int>> read_transitions(const Node& value, const Level
   return pairs;
 }
 
+FaceCondition read_face(const Node& faces, const char* key) {
+  const auto& keys = study_declarations();
+  const std::string path = std::string("model.faces.") + key;
+  const Node& value = faces[key];
+  if (!value.is_map()) {
+    keys.word(faces, path);
+    return {};
+  }
+  keys.check(value, path);
+  if (!value["pinned"].present())
+    throw InputError(fmt::format("`{}` says nothing", key), value.place(), "write flat, or {pinned: 0.7 eV}");
+  return {value["pinned"].quantity("pinned", Dimension::energy)};
+}
+
+void read_faces(const Node& faces, Model& model) {
+  if (!faces.present()) return;
+  if (!faces.is_map())
+    throw InputError("`faces` is not a map", faces.place(),
+                     "write faces: {bottom: flat, top: {pinned: 0.7 eV}}");
+  study_declarations().check(faces, "model.faces");
+  model.bottom = read_face(faces, "bottom");
+  model.top = read_face(faces, "top");
+  if (model.ends == Ends::periodic && (model.bottom.pinned || model.top.pinned))
+    throw InputError("a face is pinned, but the ends are periodic", faces.place(),
+                     "a periodic stack has no faces; write ends: hard");
+}
+
 }  // namespace
 
 std::string_view name_of(Carrier carrier) {
@@ -149,6 +176,17 @@ Model read_model(const Node& root, const Stack& stack) {
     throw InputError("`bloch_phases` stands without periodic ends", node.key_place("bloch_phases"),
                      node["ends"].present() ? node["ends"].place() : Place{},
                      "write ends: periodic beside it");
+  model.filling =
+      keys.word(node, "model.filling") == "per module" ? Filling::per_module : Filling::equilibrium;
+  model.self_consistent = keys.word(node, "model.charge") == "self-consistent";
+  model.exchange_correlation = keys.word(node, "model.exchange_correlation") == "hedin-lundqvist";
+  for (const char* key : {"faces", "exchange_correlation"})
+    if (node[key].present() && !model.self_consistent &&
+        !(node[key].is_scalar() && node[key].text() == "none"))
+      throw InputError(fmt::format("`{}` stands without the stack's own charge", key), node.key_place(key),
+                       "write charge: self-consistent beside it");
+  read_faces(node["faces"], model);
+  model.polarization = keys.on_off(node, "model.polarization");
   model.accuracy = keys.quantity(node, "model.accuracy");
   if (!(model.accuracy > 0))
     throw InputError("`accuracy` is not above zero", node["accuracy"].place(), "write accuracy: 1 ueV");

@@ -39,6 +39,25 @@ void warn_of_faces(const Study& study, Notes& notes) {
   }
 }
 
+void say_charge(const Study& study, Notes& notes) {
+  double donors = 0, acceptors = 0;
+  bool polar = false;
+  for (const Layer& layer : study.stack.layers) {
+    donors += layer.donors;
+    acceptors += layer.acceptors;
+  }
+  for (const BandParameters& bands : study.stack.bands)
+    polar =
+        polar || (study.model.polarization && bands.polarization != study.stack.bands.front().polarization);
+  const bool doped = donors > 0 || acceptors > 0,
+             pinned = study.model.bottom.pinned || study.model.top.pinned;
+  if (study.model.self_consistent && !doped && !pinned && !polar)
+    notes.warn("the stack holds no charge: no donors, acceptors, pinned faces or polarization");
+  if (study.absorption && !doped && !pinned && !(polar && study.model.self_consistent))
+    notes.warn(
+        "the levels are empty, so nothing is absorbed between them: the stack holds no donors or acceptors");
+}
+
 }  // namespace
 
 Study read_study(const std::string& text, const std::string& file, const MaterialTable& table,
@@ -77,6 +96,18 @@ Study read_study(const std::string& text, const std::string& file, const Materia
     study.field = -*study.bias / study.stack.length();
   }
   if (study.model.ends == Ends::periodic) check_periodic(root, study);
+  study.carrier_temperature = root["carrier_temperature"].present()
+                                  ? keys.quantity(root, "carrier_temperature")
+                                  : study.stack.environment.temperature;
+  if (study.carrier_temperature < 0)
+    throw InputError("`carrier_temperature` is below zero", root["carrier_temperature"].place(),
+                     "0 K is the limit of filled and empty states");
+  if (bias.present() && (study.model.bottom.pinned || study.model.top.pinned))
+    throw InputError("both `bias` and a pinned face are given", root.key_place("bias"),
+                     root["model"].key_place("faces"),
+                     "each fixes the potential of a face; keep one of them");
+  if (root["absorption"].present()) study.absorption = read_absorption(root);
+  say_charge(study, notes);
   if (root["dynamics"].present()) study.dynamics = read_dynamics(root, study);
   check_media(root, study);
   warn_of_faces(study, notes);
