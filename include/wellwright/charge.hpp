@@ -51,7 +51,7 @@ struct Charge {
   bool converged = true;
 };
 
-/// Fills the study's levels and, with `charge: self-consistent`, makes levels and potential agree to 2e-8 eV.
+/// Fills the study's levels and, with `charge: self-consistent`, makes levels and potential agree to 1e-7 eV.
 /// The levels used are those of a grid of its own, as many as hold charge. `converged` is false when the loop
 /// did not settle. Throws NotConverged, Stopped.
 Charge solve_charge(const Study& study, const Progress& progress = {});

@@ -31,7 +31,7 @@ Eigen::MatrixXd velocity_moment(const Levels& levels);
 /// The pairs worth a line in a summary: those asked for, or all pairs of the lowest four. Counted from 1.
 std::vector<std::pair<int, int>> listed_transitions(const Study& study, int level_count);
 
-/// Electron-hole pairs.
+/// Electron-hole pairs without exciton binding.
 struct Interband {
   Carrier hole = Carrier::heavy_hole;
   double gap = 0;           ///< Ec_min - Ev_max of that kind [eV]
@@ -41,31 +41,6 @@ struct Interband {
       exciton_binding;  ///< variational, two-dimensional 1s trial [eV], positive; NaN: not computed
 };
 Interband interband(const Levels& electrons, const Levels& holes);
-
-/// One spectrum, (photon energy) each.
-struct Spectrum {
-  Eigen::VectorXd photon_energy;                         ///< [eV]
-  Eigen::VectorXd absorptance;                           ///< 1 - exp(-passes A); negative where there is gain
-  Eigen::VectorXd index_change;                          ///< real part, averaged over `length`
-  Eigen::VectorXd conductivity_real, conductivity_imag;  ///< of the sheet [S]
-  double length = 0;                                     ///< [nm]
-};
-/// Lines of the spectrum, strongest first.
-struct Peaks {
-  Eigen::VectorXd bare_energy, collective_energy, full_width;  ///< [eV]
-  Eigen::VectorXd strength;         ///< sum of (N_i - N_f) f_fi of the mode [nm^-2]
-  std::vector<int> initial, final;  ///< of the transition with the largest share, from 1
-  int count() const { return static_cast<int>(initial.size()); }
-};
-struct Absorption {
-  Spectrum spectrum;
-  Peaks peaks;
-};
-/// Absorption between the subbands of one carrier by p-polarised light, each transition integrated over the
-/// in-plane momentum with the levels' own dispersion; with `collective` by the full response. Throws
-/// InputError.
-Absorption absorption(const Study& study, const Levels& levels, const Dispersion& dispersion,
-                      const Filled& filled, Notes& notes);
 
 /// A grid that refines both grids of one stack, with a degree whose quadrature is exact for products of their
 /// functions.

@@ -49,21 +49,6 @@ struct Model {
   bool polarization = true;           ///< of wurtzite layers
 };
 
-enum class LineShape { lorentzian, gaussian, voigt };
-
-/// The absorption block.
-struct AbsorptionRequest {
-  double from = 0, to = 0;  ///< photon energy [eV]
-  int points = 0;
-  double full_width = 0;  ///< Lorentzian part, or of the Gaussian when that is the shape [eV]
-  LineShape shape = LineShape::lorentzian;
-  double gaussian_width = 0;          ///< full width of the Gaussian part of a Voigt line [eV]
-  double angle = 0.7853981633974483;  ///< internal, to the growth axis [rad]
-  int passes = 1;
-  bool collective = true;  ///< depolarization
-  Place place;
-};
-
 /// Starts of the dynamics, one struct each.
 struct PacketStart {
   double centre = 0, spread = 0, wavenumber = 0;
@@ -110,7 +95,6 @@ struct Study {
   std::optional<double>
       bias;  ///< when given: potential of the top minus the bottom [V], and field = -bias / length
   Model model;
-  std::optional<AbsorptionRequest> absorption;
   std::optional<DynamicsRequest> dynamics;
 };
 

@@ -70,6 +70,14 @@ void say_charge(const Study& study, const Charge& charge, Notes& notes) {
             "bends the bands"
           : "donors and acceptors are fully ionised; the levels fill, but their charge does not bend the "
             "bands");
+  if (study.model.exchange_correlation)
+    notes.assume("exchange and correlation of the electrons after Hedin and Lundqvist, in the local density");
+  const bool polar = std::any_of(study.stack.bands.begin(), study.stack.bands.end(),
+                                 [](const BandParameters& bands) { return bands.polarization != 0; });
+  if (polar && study.model.polarization)
+    notes.assume(
+        "polarization: spontaneous and piezoelectric, as sheets of bound charge at interior interfaces; the "
+        "materials name the set its constants come from");
   if (study.model.filling == Filling::per_module)
     notes.assume("each copy of a repeat is neutral by itself, with a Fermi level of its own");
   if (study.model.self_consistent && study.model.filling == Filling::equilibrium && study.field != 0)

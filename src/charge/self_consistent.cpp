@@ -26,7 +26,7 @@ constexpr int most_steps = 40, most_newton = 60;
 constexpr int most_levels = 600;
 constexpr double small_share = 1e-10;   // of the charge, in the highest level: more levels hold nothing
 constexpr double reach_kT = 28;         // exp(-28) is below small_share
-constexpr double finest = 2e-8;         // [eV] change of the levels at which the loop ends
+constexpr double finest = 1e-7;         // [eV] change of the levels at which the loop ends
 constexpr double warmest_start = 2e-3;  // [eV] at least, of the classical start
 
 class Loop {

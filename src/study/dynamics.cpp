@@ -95,6 +95,26 @@ FieldStepStart read_field_step(const Node& node, const LevelRequest& levels) {
   return step;
 }
 
+constexpr Dimension energies[] = {Dimension::energy, Dimension::length, Dimension::frequency,
+                                  Dimension::inverse_length};
+
+double photon_energy_of(const Node& value, const char* key) {
+  const Quantity q = value.quantity(key, std::vector<Dimension>(std::begin(energies), std::end(energies)));
+  if (!(q.value > 0))
+    throw InputError(fmt::format("`{}` is not above zero", key), value.place(),
+                     fmt::format("write {}: 1.56 eV", key));
+  switch (q.dimension) {
+    case Dimension::length:
+      return energy_of_wavelength(q.value);
+    case Dimension::frequency:
+      return constants::planck * q.value;
+    case Dimension::inverse_length:
+      return energy_of_wavelength(1 / q.value);
+    default:
+      return q.value;
+  }
+}
+
 PhotoexcitedStart read_photoexcited(const Node& node, const Node& key, const Study& study,
                                     const Node& model) {
   const auto& keys = study_declarations();

@@ -49,8 +49,7 @@ std::vector<EffectiveValue> effective_values(const Study& study) {
     const auto dot = path.rfind('.');
     const std::string parent = dot == std::string::npos ? "" : path.substr(0, dot);
     // Below `dynamics`, and below a key that may be a word or a map, only what the study opened.
-    if ((parent.starts_with("dynamics") || parent.starts_with("absorption")) && !find(root, parent).is_map())
-      continue;
+    if (parent.starts_with("dynamics") && !find(root, parent).is_map()) continue;
     if (parent.starts_with("model.") && !find(root, parent).is_map()) continue;
     const Node& value = find(root, path);
     if (value.is_map()) continue;  // its own keys follow

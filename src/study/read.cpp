@@ -53,9 +53,6 @@ void say_charge(const Study& study, Notes& notes) {
              pinned = study.model.bottom.pinned || study.model.top.pinned;
   if (study.model.self_consistent && !doped && !pinned && !polar)
     notes.warn("the stack holds no charge: no donors, acceptors, pinned faces or polarization");
-  if (study.absorption && !doped && !pinned && !(polar && study.model.self_consistent))
-    notes.warn(
-        "the levels are empty, so nothing is absorbed between them: the stack holds no donors or acceptors");
 }
 
 }  // namespace
@@ -106,7 +103,6 @@ Study read_study(const std::string& text, const std::string& file, const Materia
     throw InputError("both `bias` and a pinned face are given", root.key_place("bias"),
                      root["model"].key_place("faces"),
                      "each fixes the potential of a face; keep one of them");
-  if (root["absorption"].present()) study.absorption = read_absorption(root);
   say_charge(study, notes);
   if (root["dynamics"].present()) study.dynamics = read_dynamics(root, study);
   check_media(root, study);

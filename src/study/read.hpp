@@ -24,11 +24,6 @@ Model read_model(const Node& root, const Stack& stack);
 /// Reads `dynamics`. Throws InputError.
 DynamicsRequest read_dynamics(const Node& dynamics, const Study& study);
 
-/// The absorption block of the study. Throws InputError.
-AbsorptionRequest read_absorption(const Node& root);
-/// A photon energy given as an energy, wavelength, frequency or wavenumber [eV]. Throws InputError.
-double photon_energy_of(const Node& value, const char* key);
-
 /// Refuses media that lack a value which the study's questions need, and carriers that the material does not
 /// allow. Throws InputError.
 void check_media(const Node& root, const Study& study);
