@@ -119,10 +119,10 @@ FaceCondition read_face(const Node& faces, const char* key) {
   const auto& keys = study_declarations();
   const std::string path = std::string("model.faces.") + key;
   const Node& value = faces[key];
-  if (!value.is_map()) {
-    keys.word(faces, path);
-    return {};
-  }
+  if (value.present() && !value.is_map() && !(value.is_scalar() && value.text() == "flat"))
+    throw InputError(fmt::format("the {} face is neither flat nor pinned", key), value.place(),
+                     "write flat, or {pinned: 0.7 eV}");
+  if (!value.is_map()) return {};
   keys.check(value, path);
   if (!value["pinned"].present())
     throw InputError(fmt::format("`{}` says nothing", key), value.place(), "write flat, or {pinned: 0.7 eV}");

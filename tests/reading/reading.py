@@ -88,7 +88,7 @@ HEAD = """# The result file
 
 HDF5, and valid netCDF-4. Energies eV, lengths nm, times ps, sheet densities cm-2, fields kV/cm, frequencies THz. Groups of
 holes carry the suffix `_heavy_hole` or `_light_hole` and hold the same datasets. Undefined doubles are NaN; an empty
-answer is an axis of length 0. Groups of later steps (charge, absorption, lifetimes, planning) are not there yet.
+answer is an axis of length 0. Groups of later steps (absorption, lifetimes, planning) are not there yet.
 
 Root attributes: `title`, `program`, `version`, `format` ("wellwright result"), `format_version`, `created` (UTC),
 `study` (the whole text), `settings` (the --set list), `materials` (YAML of the entries used, with sources),
