@@ -31,7 +31,7 @@ layers:
   - {material: Al0.48In0.52As, thickness: 10 nm}
 model: {carrier: [electron, heavy hole], levels: 3}
 """
-WARNED = "layers:\n  - {material: AlN, thickness: 3 nm}\n  - {material: GaN, thickness: 2 nm}\n  - {material: AlN, thickness: 3 nm}\n"
+WARNED = "layers:\n  - {material: GaAs, thickness: 20 nm, donors: 1e10 cm^-2}\n"  # dopants at the hard faces
 # Work of some seconds: many levels of a long stack of unequal wells.
 LONG = "layers:\n" + "".join(f"  - {{material: Al0.3Ga0.7As, thickness: 3 nm}}\n  - {{material: GaAs, thickness: {6 + 0.001 * i:.3f} nm}}\n"
                              for i in range(1200)) + "model: {levels: 40, bands: one}\n"
