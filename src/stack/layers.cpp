@@ -88,7 +88,7 @@ Grading read_shape(const Node& graded) {
 }
 
 std::string read_name(const Node& value) {
-  const std::string name = value.string("name");
+  std::string name = value.string("name");
   double number = 0;
   if (name.empty()) throw InputError("`name` is empty", value.place(), "leave the key out, or give a name");
   if (read_number(name, number))

@@ -35,6 +35,8 @@ TEST_CASE("Two levels beat with h / dE, 4 |c1 c2 z12| from peak to peak") {
   const double period = constants::planck / (probe.levels.energy[1] - probe.levels.energy[0]);
   const Run full = run(study, mix, period, 401);
   const auto& d = full.dynamics;
+  CHECK(std::arg(d.amplitude[0]) == 0);
+  CHECK(std::arg(d.amplitude[1]) == Approx(0.4));
   REQUIRE(d.beats.size() == 1);
   CHECK(d.beats[0].period == Approx(period).epsilon(1e-12));
   CHECK(d.mean_position[400] == Approx(d.mean_position[0]).epsilon(1e-10));
@@ -65,6 +67,8 @@ TEST_CASE("An eigenstate stays put") {
   const auto& d = still.dynamics;
   CHECK((d.mean_position.array() - still.levels.mean_position[2]).abs().maxCoeff() < 1e-12);
   CHECK((d.survival.array() - 1).abs().maxCoeff() < 1e-12);
+  const Eigen::VectorXd in_layers = still.levels.layer_probability.row(2);
+  CHECK((d.layer_probability.colwise() - in_layers).cwiseAbs().maxCoeff() < 1e-12);
   CHECK(d.beats.empty());
   CHECK_FALSE(d.classical_period);
 }

@@ -29,7 +29,9 @@ TEST_CASE("Units and signs of a table of transitions") {
   CHECK(t.wavelength(0, 1) == Approx(1239.841984 / split).epsilon(1e-6));
   CHECK(t.wavelength(1, 0) == t.wavelength(0, 1));
   CHECK(t.frequency(0, 1) == Approx(split / 4.135667697e-3).epsilon(1e-6));
+  CHECK(t.frequency(1, 0) == t.frequency(0, 1));
   CHECK(t.beat_period(0, 1) == Approx(0.0982509).epsilon(1e-6));
+  CHECK(t.beat_period(1, 0) == t.beat_period(0, 1));
   for (int i = 0; i < 6; ++i) {
     CHECK(std::isnan(t.wavelength(i, i)));
     CHECK(std::isnan(t.frequency(i, i)));
@@ -46,6 +48,8 @@ TEST_CASE("Between hard ends the velocity form is energy times dipole, for every
     const Levels levels = solve(study);
     const Eigen::MatrixXd z = levels.moment(levels.profile.grid.z), v = velocity_moment(levels);
     CAPTURE(static_cast<int>(bands));
+    // The closed sum over final states is that of one band alone.
+    CHECK(transitions(levels).f_sum.array().isNaN().all() == (bands != Bands::one));
     for (int f = 0; f < levels.count(); ++f)
       for (int i = 0; i < levels.count(); ++i)
         // 1e-8 of the typical 0.1 eV x 10 nm: the accuracy asked of the levels enters by its root.
@@ -74,6 +78,7 @@ TEST_CASE("A periodic cell without a potential has the plane waves' momentum") {
   CHECK(std::isnan(t.dipole(1, 2)));  // equal energies: the velocity form defines no dipole
   CHECK(std::isnan(t.beat_period(1, 2)));
   CHECK(std::isnan(t.dipole(0, 0)));
+  CHECK(t.oscillator_strength(0, 0) == 0);
   CHECK(std::isnan(t.f_sum[0]));
   CHECK(std::abs(t.dipole(0, 3)) < 1e-7);
 }
@@ -87,7 +92,8 @@ TEST_CASE("In a periodic cell the velocity form is that of the same well between
     const Transitions hard = transitions(solve(study));
     study.model.ends = Ends::periodic;
     const Transitions periodic = transitions(solve(study));
-    CHECK(std::abs(periodic.dipole(0, 1)) == Approx(std::abs(hard.dipole(0, 1))).epsilon(1e-5));
+    CHECK(periodic.dipole(0, 1) == Approx(hard.dipole(0, 1)).epsilon(1e-5));  // sign and all
+    CHECK(periodic.dipole(1, 0) == Approx(hard.dipole(1, 0)).epsilon(1e-5));
     CHECK(periodic.oscillator_strength(0, 1) == Approx(hard.oscillator_strength(0, 1)).epsilon(1e-5));
   }
 }
