@@ -1,7 +1,11 @@
 // SPDX-License-Identifier: Apache-2.0
 // What the levels hold of a start: expansions, levels of a request, and pulses.
+#include <Eigen/LU>
 #include <catch2/catch.hpp>
 #include <cmath>
+#include <complex>
+#include <cstdio>
+#include <string>
 
 #include "support/hand_made_levels.hpp"
 #include "wellwright/dynamics.hpp"
