@@ -1,6 +1,7 @@
 // SPDX-License-Identifier: Apache-2.0
 // Donors, acceptors, and the bound charge of polarization: sheets at interior interfaces, -dP/dz in gradings.
 #include <algorithm>
+#include <cmath>
 
 #include "charge/poisson.hpp"
 
@@ -39,6 +40,8 @@ FixedCharge fixed_charge(const Study& study, const Grid& grid) {
   for (int e = 1; e < elements; ++e) charge.sheet[e] = P[e * n - 1] - P[e * n];
   if (stack.periodic) charge.sheet[0] = P[grid.rows() - 1] - P[0];
   charge.polarization = charge.sheet.sum() - grid.weight.dot(slope);
+  if (std::abs(charge.polarization) < 1e-12 * charge.sheet.cwiseAbs().sum())
+    charge.polarization = 0;  // rounding
   return charge;
 }
 

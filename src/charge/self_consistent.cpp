@@ -13,6 +13,7 @@
 #include <memory>
 #include <numbers>
 
+#include "charge/acceleration.hpp"
 #include "charge/modules.hpp"
 #include "charge/poisson.hpp"
 #include "charge/subbands.hpp"
@@ -221,7 +222,8 @@ class Loop {
     return sum;
   }
   double fixed_in(int module) const {
-    if (modules_ == 1) return fixed_.total();
+    // Bound charge draws carriers only where their charge bends the bands.
+    if (modules_ == 1 && study_.model.self_consistent) return fixed_.total();
     double sum = 0;
     for (std::size_t l = 0; l < module_of_.size(); ++l)
       if (module_of_[l] == module) sum += study_.stack.layers[l].donors - study_.stack.layers[l].acceptors;
@@ -344,6 +346,7 @@ class Loop {
           return std::pair(charge, slope);
         },
         before);
+    V_ = acceleration_.next(before, V_);
   }
 
   // Solves Poisson's equation with a charge density that follows V; `at(row, V - reference)` gives charge and
@@ -411,7 +414,9 @@ class Loop {
     for (double& fermi : fermi_) fermi += shift;
     charge_.electron_density = density(true);
     charge_.hole_density = density(false);
-    double balance = fixed_.total() + grid_.weight.dot(charge_.hole_density - charge_.electron_density);
+    const double bound = study_.model.self_consistent ? fixed_.polarization : 0;
+    double balance = fixed_.donors - fixed_.acceptors + bound +
+                     grid_.weight.dot(charge_.hole_density - charge_.electron_density);
     if (pinned_) balance = 0;  // the faces hold what is left
     charge_.neutrality =
         fixed_.donors + fixed_.acceptors > 0 ? balance / (fixed_.donors + fixed_.acceptors) : balance;
@@ -449,6 +454,7 @@ class Loop {
   std::vector<double> fermi_;  // of each module, on the electron's axis in the frame of V_
   double deepest_ = 0.1;       // [eV] largest filling
   bool pinned_ = false;
+  Acceleration acceleration_;
   Charge charge_;
 };
 

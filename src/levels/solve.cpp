@@ -163,7 +163,10 @@ class Solver {
         lowest =
             std::min(lowest, op_->profile.at.edge.segment(e * (grid.degree + 1), grid.degree + 1).minCoeff());
     const int wanted = request_.count.value_or(1);
-    range_ = {below(std::max(lowest, op_->floor.energy)), 2 * wanted};
+    range_.first = below(std::max(lowest, op_->floor.energy));
+    const int up_to_far = below(op_->profile.at.edge.maxCoeff() + far_above) - range_.first;
+    const int most = std::clamp(up_to_far, 1, largest_level_count);
+    range_.count = std::min(2 * wanted, most);
     for (;;) {
       solve_range();
       int found = 0, last = 0;
@@ -172,14 +175,12 @@ class Solver {
           ++found;
           last = i;
         }
-      const double highest = pairs_.energy[range_.lower() + range_.count - 1];
-      const bool far = highest > op_->profile.at.edge.maxCoeff() + far_above;
-      if (found == wanted || far || range_.count >= largest_level_count) {
+      if (found == wanted || range_.count >= most) {
         range_.count = found == 0 ? 0 : last + 1;
         solve_range();
         return;
       }
-      range_.count = std::min(2 * range_.count, largest_level_count);
+      range_.count = std::min(2 * range_.count, most);
     }
   }
 

@@ -151,3 +151,36 @@ model: {charge: self-consistent, bands: one, faces: {top: {pinned: 0.7 eV}}}
   // Full depletion: the bending is e N w^2 / 2 eps; from the middle of the stack's bending w within 10 %.
   CHECK(V[V.size() - 1] > 0.6);
 }
+
+TEST_CASE("Per module each copy of a repeat is neutral by itself, in a field too") {
+  const Study study = study_of(R"(
+substrate: InP
+temperature: 77 K
+field: 40 kV/cm
+layers:
+  - repeat: 3
+    layers:
+      - {material: Al0.48In0.52As, thickness: 4 nm}
+      - {material: In0.53Ga0.47As, thickness: 6 nm}
+      - {material: Al0.48In0.52As, thickness: 2 nm, donors: 2e11 cm^-2}
+      - {material: In0.53Ga0.47As, thickness: 4 nm}
+  - {material: Al0.48In0.52As, thickness: 6 nm}
+model: {charge: self-consistent, filling: per module, levels: 8}
+)");
+  const Charge charge = solve_charge(study);
+  CHECK(charge.converged);
+  CHECK(charge.history.size() <= 15);
+  REQUIRE(charge.module_fermi_level.size() == 3);
+  // A module further up in the field lies higher.
+  CHECK(charge.module_fermi_level[1] > charge.module_fermi_level[0] + 0.03);
+  CHECK(charge.module_fermi_level[2] > charge.module_fermi_level[1] + 0.03);
+  Notes notes;
+  const Levels levels = solve_levels(study, Carrier::electron, notes, {}, charge.potential);
+  const Filled filled =
+      fill(study, levels, in_plane_dispersion(levels, Eigen::VectorXd::LinSpaced(26, 0, 0.6)), charge);
+  std::vector<double> held(3, 0);
+  for (int i = 0; i < levels.count(); ++i)
+    for (std::size_t m = 0; m < 3; ++m)
+      if (filled.fermi_level[i] == charge.module_fermi_level[m]) held[m] += filled.sheet_density[i];
+  for (const double each : held) CHECK(each == Approx(2e-3).epsilon(1e-4));  // eight levels hold nearly all
+}
