@@ -11,9 +11,10 @@
 #include <boost/math/tools/toms748_solve.hpp>
 #include <cmath>
 #include <memory>
-#include <numbers>
 
 #include "charge/acceleration.hpp"
+#include "charge/charge_grid.hpp"
+#include "charge/classical.hpp"
 #include "charge/modules.hpp"
 #include "charge/poisson.hpp"
 #include "charge/subbands.hpp"
@@ -22,13 +23,11 @@
 namespace wellwright {
 namespace {
 
-constexpr int charge_degree = 12;
 constexpr int most_steps = 40, most_newton = 60;
 constexpr int most_levels = 600;
-constexpr double small_share = 1e-10;   // of the charge, in the highest level: more levels hold nothing
-constexpr double reach_kT = 28;         // exp(-28) is below small_share
-constexpr double finest = 1e-7;         // [eV] change of the levels at which the loop ends
-constexpr double warmest_start = 2e-3;  // [eV] at least, of the classical start
+constexpr double small_share = 1e-10;  // of the charge, in the highest level: more levels hold nothing
+constexpr double reach_kT = 28;        // exp(-28) is below small_share
+constexpr double finest = 1e-7;        // [eV] change of the levels at which the loop ends
 
 class Loop {
  public:
@@ -74,26 +73,8 @@ class Loop {
  private:
   // ---- grid and frame ------------------------------------------------------------------------------------
   void make_grid_for(int levels) {
-    std::vector<double> all = study_.stack.faces();
-    const auto faces = all;
-    for (const Carrier carrier : carriers_) {
-      const double top = guessed_top(study_, carrier, levels) + reach_kT * constants::boltzmann * T_ / 4;
-      const Grid one = make_grid(faces, first_cuts(study_, carrier, top), 1);
-      all.insert(all.end(), one.boundaries.begin(), one.boundaries.end());
-    }
-    std::sort(all.begin(), all.end());
-    std::vector<std::vector<double>> cuts(faces.size() - 1);
-    std::size_t layer = 0;
-    double last = faces[0];
-    for (const double z : all) {
-      while (layer + 1 < faces.size() - 1 && z >= faces[layer + 1] - 1e-9) ++layer;
-      const double thickness = faces[layer + 1] - faces[layer];
-      if (z - faces[layer] < 1e-6 * thickness || faces[layer + 1] - z < 1e-6 * thickness) continue;
-      if (!cuts[layer].empty() && z - last < 0.02 * thickness) continue;
-      cuts[layer].push_back((z - faces[layer]) / thickness);
-      last = z;
-    }
-    grid_ = make_grid(faces, cuts, charge_degree);
+    grid_ = charge_grid(study_, carriers_, levels);
+    const auto faces = study_.stack.faces();
     fixed_ = fixed_charge(study_, grid_);
     permittivity_.resize(grid_.rows());
     mass_.resize(grid_.rows());
@@ -135,59 +116,16 @@ class Loop {
   bool neutral() const { return !pinned_; }
 
   // ---- the start: classical electrons and holes ----------------------------------------------------------
-  // Density with the three-dimensional density of states; J. Bednarczyk, J. Bednarczyk, Phys. Lett. A 64, 409
-  // (1978) for the Fermi integral, good to 0.4 %, enough for a start.
-  static double fermi_half(double eta) {
-    const double v =
-        std::pow(eta, 4) + 50 + 33.6 * eta * (1 - 0.68 * std::exp(-0.17 * (eta + 1) * (eta + 1)));
-    return 1 / (std::exp(-eta) + 1.329340388179137 * std::pow(v, -0.375));
-  }
   void start() {
     if (!study_.model.self_consistent) {  // polarization alone, no charge that moves
       poisson_->factor(Eigen::VectorXd::Zero(poisson_->nodes()));
       V_ += poisson_->solve(-poisson_->residual(V_, closed(sources_)));
       return;
     }
-    const double kT = std::max(constants::boltzmann * T_, warmest_start);
-    Eigen::VectorXd hole_edge(grid_.rows()), hole_mass(grid_.rows());
-    const int n = grid_.degree + 1;
-    for (int row = 0; row < grid_.rows(); ++row) {
-      const auto at = static_cast<std::size_t>(grid_.layer[static_cast<std::size_t>(row / n)]);
-      const BandParameters& bands = study_.stack.bands[at];
-      hole_edge[row] = bands.heavy_hole_edge + study_.field * grid_.z[row];
-      hole_mass[row] = std::isfinite(bands.heavy_hole_mass) ? bands.heavy_hole_mass : 0.5;
-    }
-    const bool holes = carriers_.size() > 1;
-    const auto states = [&](double m) {
-      return 2 * std::pow(m * kT / (4 * std::numbers::pi * constants::hbar2_over_2m0), 1.5);
-    };
-    const auto density = [&](double filling, double m) { return states(m) * fermi_half(filling / kT); };
-    if (neutral()) {  // a Fermi level at which the flat stack is neutral
-      double low = edge_.minCoeff() - 3, high = edge_.maxCoeff() + 3;
-      for (int i = 0; i < 200; ++i) {
-        const double mid = 0.5 * (low + high);
-        double sum = fixed_.total();
-        for (int row = 0; row < grid_.rows(); ++row) {
-          sum -= grid_.weight[row] * density(mid - edge_[row], mass_[row]);
-          if (holes) sum += grid_.weight[row] * density(hole_edge[row] - mid, hole_mass[row]);
-        }
-        (sum > 0 ? low : high) = mid;
-      }
-      std::fill(fermi_.begin(), fermi_.end(), 0.5 * (low + high));
-    }
-    newton(
-        [&](int row, double shift) {
-          const double step = 1e-4 * kT, at = fermi_[0] - edge_[row] - shift;
-          const double here = density(at, mass_[row]);
-          double charge = -here, slope = (density(at + step, mass_[row]) - here) / step;
-          if (holes) {
-            const double up = hole_edge[row] + shift - fermi_[0], p = density(up, hole_mass[row]);
-            charge += p;
-            slope += (density(up + step, hole_mass[row]) - p) / step;
-          }
-          return std::pair(charge, slope);
-        },
-        Eigen::VectorXd::Zero(V_.size()));
+    const ClassicalGas gas(study_, grid_, edge_, mass_, carriers_.size() > 1);
+    if (neutral()) fermi_.assign(fermi_.size(), gas.neutral_fermi(fixed_.total()));
+    newton([&](int row, double shift) { return gas.charge(row, fermi_[0], shift); },
+           Eigen::VectorXd::Zero(V_.size()));
   }
 
   // Fixed charge alone between flat ends: what is left over sits on the top face, outside.
